@@ -39,7 +39,11 @@ export default defineConfig({
           name: 'database',
           root: at('.'),
           environment: 'node',
-          include: ['packages/db/**/*.test.ts', 'apps/{api,worker,cli}/src/**/*.test.ts', 'tests/{faults,security,load}/**/*.test.ts'],
+          include: [
+            'packages/db/**/*.test.ts',
+            'apps/{api,worker,cli}/src/**/*.test.ts',
+            'tests/{faults,security,load}/**/*.test.ts',
+          ],
           exclude: ['**/node_modules/**', '**/*.unit.test.ts'],
           globalSetup: ['packages/db/testing/server.ts'],
           pool: 'forks',
@@ -47,10 +51,25 @@ export default defineConfig({
           hookTimeout: 60_000,
         },
       },
-      { test: { name: 'reference', root: at('.'), environment: 'node', include: ['tests/reference/**/*.test.ts'], testTimeout: 120_000 } },
+      {
+        test: {
+          name: 'reference',
+          root: at('.'),
+          environment: 'node',
+          include: ['tests/reference/**/*.test.ts'],
+          testTimeout: 120_000,
+        },
+      },
       {
         plugins: [react()],
-        test: { name: 'web', root: at('apps/web'), environment: 'jsdom', include: ['src/**/*.test.{ts,tsx}'], setupFiles: ['src/test-setup.ts'], css: false },
+        test: {
+          name: 'web',
+          root: at('apps/web'),
+          environment: 'jsdom',
+          include: ['src/**/*.test.{ts,tsx}'],
+          setupFiles: ['src/test-setup.ts'],
+          css: false,
+        },
       },
       {
         test: {
