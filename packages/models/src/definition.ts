@@ -88,6 +88,8 @@ export interface ModelDefinition {
   resultBytes: Expression;
   /** Validity of a complete specification. Pure, + − × ÷ √ only. */
   notes(body: { parameters: { [name: string]: Json }; numerics: { [name: string]: Json } }): ValidityNote[];
+  /** Sentences by note code; {value} and {limit} are replaced by formatted quantities. */
+  noteTexts: { [code: string]: string };
   preview: PreviewReduction[];
   examples: WorkedExample[];
   /** Prose of the methods page; formulas in TeX between $…$ (inline) and $$…$$ (display). */

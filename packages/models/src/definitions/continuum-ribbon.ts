@@ -235,6 +235,7 @@ export const continuumRibbon: ModelDefinition = {
   assembleBytes: 65536,
   resultBytes: 65536,
   notes: () => [],
+  noteTexts: {},
   preview: [],
   examples: [],
   methods: { equations: '', numerics: '', validity: '', sources: [], pitfalls: [] },

@@ -285,6 +285,7 @@ export const landauLevels: ModelDefinition = {
   assembleBytes: 65536,
   resultBytes: 65536,
   notes: () => [],
+  noteTexts: {},
   preview: [],
   examples: [],
   methods: { equations: '', numerics: '', validity: '', sources: [], pitfalls: [] },
