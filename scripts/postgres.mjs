@@ -64,9 +64,16 @@ function isRunning(bin, state) {
   );
 }
 
-function initialise(bin, { stateFile, data }) {
-  // without a readable state nobody knows the password any more: this folder is ours alone, begin again
-  fs.rmSync(data, { recursive: true, force: true });
+function initialise(bin, purpose, { stateFile, data }) {
+  if (fs.existsSync(data)) {
+    // data whose password file is gone: test data may go, anything else is kept beside the new folder
+    if (purpose === 'test') fs.rmSync(data, { recursive: true, force: true });
+    else {
+      const aside = `${data}-set-aside-${new Date().toISOString().replace(/[:.]/g, '-')}`;
+      fs.renameSync(data, aside);
+      console.error(`The database folder had no matching state; it is kept as ${aside} and a new one is made.`);
+    }
+  }
   if (isRoot) execFileSync('install', ['-d', '-o', 'postgres', '-g', 'postgres', '-m', '700', data]);
   else fs.mkdirSync(data, { recursive: true, mode: 0o700 });
   const state = { data, password: randomBytes(18).toString('hex'), port: 0 };
@@ -97,7 +104,7 @@ export async function startPostgres(purpose) {
   const bin = requirePostgres();
   fs.mkdirSync(localDir, { recursive: true });
   const places = folders(purpose);
-  const state = readState(places) ?? initialise(bin, places);
+  const state = readState(places) ?? initialise(bin, purpose, places);
   if (isRunning(bin, state)) return address(state);
   const log = path.join(state.data, 'server.log');
   const tuning = purpose === 'test' ? ['-c fsync=off', '-c synchronous_commit=off', '-c full_page_writes=off'] : [];
