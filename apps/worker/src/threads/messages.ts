@@ -1,0 +1,44 @@
+import type { Certificate, ResultArrayData, TableColumns } from '@nightcone/kernel';
+
+/** A job as a thread needs it: inputs, and the kernel by its digest. */
+export interface ThreadJob {
+  hash: string;
+  kernel: string;
+  specification: { model: string; parameters: object; numerics: object };
+  tables: ReadonlyMap<string, TableColumns>;
+}
+
+/** `job`: every slice and the assembly. `slices`: from ≤ i < to. `assembly`: all payloads in slice order. */
+export type Task = { id: number; job: ThreadJob } & (
+  | { kind: 'job' }
+  | { kind: 'slices'; from: number; to: number }
+  | { kind: 'assembly'; payloads: Uint8Array[] }
+);
+
+export interface AssembledResult {
+  digest: string;
+  arrays: ResultArrayData[];
+  certificate: Certificate;
+}
+
+/** What became of a task. A refusal is the kernel's own, deterministic answer: a result like any other. */
+export type Outcome = { id: number; cpuMs: number } & (
+  | { status: 'computed'; payloads: Uint8Array[] }
+  | { status: 'assembled'; result: AssembledResult }
+  | { status: 'refused'; code: string; diagnostic: string }
+);
+
+export interface Batch {
+  type: 'batch';
+  tasks: Task[];
+  /** Compiled modules that this thread has not seen yet, by digest. */
+  modules: [string, WebAssembly.Module][];
+}
+
+export type ThreadReport =
+  | { type: 'ready'; cpuSource: 'thread' | 'wall' }
+  | { type: 'progress'; id: number; done: number; total: number }
+  | { type: 'outcomes'; outcomes: Outcome[] }
+  /** The kernel trapped or found no memory while it worked on `id`; its instance is gone, the thread goes on. */
+  | { type: 'trapped'; id: number; message: string }
+  | { type: 'end'; yielded: boolean };
