@@ -1,4 +1,12 @@
 export * from './definition.ts';
 export * from './definitions/index.ts';
+export * from './evaluate-expression.ts';
+export { quoteValue } from './explain-problem.ts';
 export * from './expression.ts';
+export * from './field-at.ts';
 export * from './fields.ts';
+export { nearestName } from './nearest-name.ts';
+export * from './parse-specification.ts';
+export * from './pointer.ts';
+export * from './schema.ts';
+export * from './manifest.ts';
