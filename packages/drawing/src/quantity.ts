@@ -1,0 +1,66 @@
+/** Units for display: prefixes by powers of ten, digits by the error. Nothing here enters a hash. */
+
+export interface DisplayUnit {
+  /** shown value = stored value × factor */
+  factor: number;
+  unit: string;
+}
+
+/** Prefixed forms of the stored units, smallest first: used below `below` stored units. */
+const prefixed: Record<string, { below: number; factor: number; unit: string }[]> = {
+  eV: [
+    { below: 1e-3, factor: 1e6, unit: 'µeV' },
+    { below: 1, factor: 1e3, unit: 'meV' },
+  ],
+  'eV nm': [{ below: 0.1, factor: 1e3, unit: 'meV nm' }],
+  'eV/nm': [{ below: 1, factor: 1e3, unit: 'meV/nm' }],
+  T: [{ below: 0.1, factor: 1e3, unit: 'mT' }],
+  nm: [{ below: 0.01, factor: 1e3, unit: 'pm' }],
+};
+
+/** The unit in which values up to `largest` (absolute, stored units) are read most easily. */
+export function displayUnit(unit: string, largest: number): DisplayUnit {
+  const size = Math.abs(largest);
+  const found = size > 0 ? prefixed[unit]?.find((candidate) => size < candidate.below) : undefined;
+  return found ? { factor: found.factor, unit: found.unit } : { factor: 1, unit };
+}
+
+const minus = (text: string) => text.replace(/^-/, '−').replace(/e-/, 'e−').replace(/e\+/, 'e');
+
+/** Fixed or scientific, whichever is shorter to read; a real minus sign. */
+export function formatNumber(value: number, digits = 4): string {
+  if (!Number.isFinite(value)) return '–';
+  if (value === 0) return '0';
+  const size = Math.abs(value);
+  if (size >= 1e6 || size < 1e-4) {
+    const [mantissa, exponent] = value.toExponential(Math.max(0, digits - 1)).split('e') as [string, string];
+    return minus(`${mantissa.includes('.') ? mantissa.replace(/\.?0+$/, '') : mantissa}e${exponent}`);
+  }
+  const decimals = Math.max(0, digits - 1 - Math.floor(Math.log10(size)));
+  const text = value.toFixed(Math.min(20, decimals));
+  return minus(text.includes('.') ? text.replace(/\.?0+$/, '') : text);
+}
+
+/**
+ * `226.406(4)`: the value to the digit of its error, the error's first digit in brackets (two when it is 1). Without an
+ * error, four significant digits.
+ */
+export function formatWithError(value: number, error: number | null | undefined): string {
+  if (!Number.isFinite(value)) return '–';
+  if (error === null || error === undefined || !(error > 0)) return formatNumber(value, 5);
+  const [first, power] = error.toExponential(0).split('e') as [string, string];
+  const places = -Number(power) + (first === '1' ? 1 : 0);
+  if (places > 14) return formatNumber(value, 15);
+  if (places <= 0) {
+    const unit = 10 ** -places;
+    return minus(`${(Math.round(value / unit) * unit).toFixed(0)}(${(Math.ceil(error / unit) * unit).toFixed(0)})`);
+  }
+  return minus(`${value.toFixed(places)}(${Math.ceil(error * 10 ** places - 1e-9)})`);
+}
+
+/** Value, error and unit in one text, with a prefix chosen by the value (or by its error where the value is 0). */
+export function formatQuantity(value: number, unit: string, error?: number | null): string {
+  const shown = displayUnit(unit, Math.max(Math.abs(value), error ?? 0));
+  const number = formatWithError(value * shown.factor, error ? error * shown.factor : null);
+  return shown.unit ? `${number} ${shown.unit}` : number;
+}
