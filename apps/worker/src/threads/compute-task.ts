@@ -1,30 +1,30 @@
 import { type KernelInstance, KernelRefusal, type KernelResult } from '@nightcone/kernel';
 import type { Outcome, Task } from './messages.ts';
 
-type Computed = Outcome extends infer O ? (O extends Outcome ? Omit<O, 'id' | 'cpuMs'> : never) : never;
+export type TaskResult = Outcome extends infer O ? (O extends Outcome ? Omit<O, 'id' | 'cpuMs'> : never) : never;
 
 export interface TaskSteps {
   /** The kernel with the task's job open. Throws KernelRefusal. */
-  open(): Promise<KernelInstance>;
+  open(): KernelInstance;
   digest(result: KernelResult): string | Promise<string>;
-  /** Called after every slice; false drops the task. */
-  afterSlice(done: number, total: number): boolean;
+  /** Called after every slice. */
+  afterSlice(done: number, total: number): void;
 }
 
 /**
- * Carries out one task. Undefined when it was dropped between two slices.
- * A KernelRefusal becomes an outcome; every other error is a failure of the machinery and passes through.
+ * Carries out one task. A KernelRefusal becomes its result; every other error, a failure of the machinery or an order
+ * to leave, passes through.
  */
-export async function computeTask(task: Task, steps: TaskSteps): Promise<Computed | undefined> {
+export async function computeTask(task: Task, steps: TaskSteps): Promise<TaskResult> {
   try {
-    const kernel = await steps.open();
+    const kernel = steps.open();
     if (task.kind === 'assembly') return await assemble(kernel, task.payloads, steps);
     const from = task.kind === 'slices' ? task.from : 0;
     const to = task.kind === 'slices' ? task.to : kernel.sliceCount();
     const payloads: Uint8Array[] = [];
     for (let slice = from; slice < to; slice++) {
       payloads.push(kernel.computeSlice(slice));
-      if (!steps.afterSlice(slice + 1 - from, to - from) && slice + 1 < to) return undefined;
+      steps.afterSlice(slice + 1 - from, to - from);
     }
     return task.kind === 'slices' ? { status: 'computed', payloads } : await assemble(kernel, payloads, steps);
   } catch (error) {
@@ -33,7 +33,7 @@ export async function computeTask(task: Task, steps: TaskSteps): Promise<Compute
   }
 }
 
-async function assemble(kernel: KernelInstance, payloads: Uint8Array[], steps: TaskSteps): Promise<Computed> {
+async function assemble(kernel: KernelInstance, payloads: Uint8Array[], steps: TaskSteps): Promise<TaskResult> {
   const result = kernel.assemble(payloads);
   return { status: 'assembled', result: { ...result, digest: await steps.digest(result) } };
 }

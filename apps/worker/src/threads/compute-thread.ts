@@ -12,7 +12,8 @@ export type BatchEnd =
 
 export interface BatchListener {
   outcomes(outcomes: Outcome[]): void;
-  progress?(id: number, done: number, total: number): void;
+  /** Share of the task in hand that is done, 0 to 1; at most every 100 ms. */
+  progress?(id: number, fraction: number): void;
 }
 
 interface Running {
@@ -117,7 +118,7 @@ export class ComputeThread {
   #hear(message: ThreadReport): void {
     const running = this.#running;
     if (message.type === 'ready') this.cpuSource = message.cpuSource;
-    else if (message.type === 'progress') running?.listener.progress?.(message.id, message.done, message.total);
+    else if (message.type === 'progress') running?.listener.progress?.(message.id, message.fraction);
     else if (message.type === 'outcomes') running?.listener.outcomes(message.outcomes);
     // Of a thread that is being ended, only its exit counts: the next batch needs a new one.
     else if (this.#terminating) return;

@@ -8,7 +8,7 @@ export class KernelShelf {
   #open: { kernel: string; hash: string } | undefined;
 
   constructor(
-    private readonly instantiate: (module: WebAssembly.Module) => KernelInstance | Promise<KernelInstance>,
+    private readonly instantiate: (module: WebAssembly.Module) => KernelInstance,
     private readonly size = 2,
   ) {}
 
@@ -17,8 +17,8 @@ export class KernelShelf {
   }
 
   /** The job's kernel with the job open in it; consecutive tasks of one job find it open already. */
-  async open(job: ThreadJob): Promise<KernelInstance> {
-    const kernel = await this.#instance(job.kernel);
+  open(job: ThreadJob): KernelInstance {
+    const kernel = this.#instance(job.kernel);
     if (this.#open?.kernel === job.kernel && this.#open.hash === job.hash) return kernel;
     this.#open = undefined;
     kernel.open(job.specification, job.tables);
@@ -32,10 +32,10 @@ export class KernelShelf {
     if (this.#open?.kernel === digest) this.#open = undefined;
   }
 
-  async #instance(digest: string): Promise<KernelInstance> {
+  #instance(digest: string): KernelInstance {
     const module = this.#modules.get(digest);
     if (!module) throw new Error(`kernel ${digest} was not sent to this thread`);
-    const instance = this.#instances.get(digest) ?? (await this.instantiate(module));
+    const instance = this.#instances.get(digest) ?? this.instantiate(module);
     // Map keeps insertion order: re-inserting makes this one the most recently used.
     this.#instances.delete(digest);
     this.#instances.set(digest, instance);

@@ -37,8 +37,8 @@ export interface Batch {
 
 export type ThreadReport =
   | { type: 'ready'; cpuSource: 'thread' | 'wall' }
-  | { type: 'progress'; id: number; done: number; total: number }
+  | { type: 'progress'; id: number; fraction: number }
   | { type: 'outcomes'; outcomes: Outcome[] }
-  /** The kernel trapped or found no memory while it worked on `id`; its instance is gone, the thread goes on. */
-  | { type: 'trapped'; id: number; message: string }
+  /** The kernel trapped or found no memory; its instance is gone, the thread goes on. */
+  | { type: 'trapped'; message: string }
   | { type: 'end'; yielded: boolean };

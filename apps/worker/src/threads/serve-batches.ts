@@ -9,8 +9,14 @@ import type { Batch, Task, ThreadReport } from './messages.ts';
 import { Outbox } from './outbox.ts';
 
 export interface KernelHost {
-  instantiate(module: WebAssembly.Module): KernelInstance | Promise<KernelInstance>;
+  /** `onProgress` is called from inside running slices and assemblies; what it throws ends them. */
+  openKernel(module: WebAssembly.Module, onProgress: (done: number, total: number) => void): KernelInstance;
   digest(result: KernelResult): string | Promise<string>;
+}
+
+/** Thrown through the kernel when the order is to leave the task in hand. */
+class TaskLeft extends Error {
+  override name = 'TaskLeft';
 }
 
 const progressEveryMs = 100;
@@ -19,53 +25,58 @@ const progressEveryMs = 100;
 export function serveBatches(port: MessagePort, control: ControlBlock, host: KernelHost): void {
   lowerPriority();
   const clock = openCpuClock();
-  let reportedAt = 0;
-  const shelf = new KernelShelf(host.instantiate);
+  const shelf = new KernelShelf((module) => host.openKernel(module, insideSlice));
   const report = (message: ThreadReport) => port.postMessage(message);
+  let reportedAt = 0;
+  let startCpuMs = 0;
+  let task: Task | undefined;
+  let slices = { done: 0, total: 1 };
+
+  function insideSlice(done: number, total: number): void {
+    if (control.mustLeave) throw new TaskLeft();
+    const now = performance.now();
+    if (now - reportedAt < progressEveryMs || !task) return;
+    reportedAt = now;
+    control.cpuMs = clock.readMs() - startCpuMs;
+    const inSlice = total > 0 ? Math.min(1, done / total) : 0;
+    report({ type: 'progress', id: task.id, fraction: Math.min(1, (slices.done + inSlice) / slices.total) });
+  }
+
+  async function compute(next: Task, outbox: Outbox): Promise<void> {
+    task = next;
+    slices = { done: 0, total: 1 };
+    const result = await computeTask(next, {
+      open: () => shelf.open(next.job),
+      digest: host.digest,
+      afterSlice(done, total) {
+        slices = { done, total };
+        insideSlice(0, 1);
+      },
+    });
+    outbox.add({ ...result, id: next.id });
+    control.cpuMs = clock.readMs() - startCpuMs;
+  }
 
   async function serve(batch: Batch): Promise<void> {
     for (const [digest, module] of batch.modules) shelf.addModule(digest, module);
-    const startMs = clock.readMs();
+    startCpuMs = clock.readMs();
     const outbox = new Outbox(port, clock);
-    for (const task of batch.tasks) {
-      if (control.mustYield) return end(outbox, true);
+    const end = (message: ThreadReport) => {
+      outbox.post();
+      report(message);
+    };
+    for (const next of batch.tasks) {
+      if (control.mustYield) return end({ type: 'end', yielded: true });
       try {
-        if (!(await compute(task, outbox, startMs))) return end(outbox, true);
+        await compute(next, outbox);
       } catch (error) {
-        shelf.discard(task.job.kernel);
-        outbox.post();
-        return report({
-          type: 'trapped',
-          id: task.id,
-          message: error instanceof Error ? error.message : String(error),
-        });
+        // Nothing is known of the instance's memory after a trap or an abandoned slice.
+        shelf.discard(next.job.kernel);
+        if (error instanceof TaskLeft) return end({ type: 'end', yielded: true });
+        return end({ type: 'trapped', message: error instanceof Error ? error.message : String(error) });
       }
     }
-    end(outbox, false);
-  }
-
-  async function compute(task: Task, outbox: Outbox, startMs: number): Promise<boolean> {
-    const outcome = await computeTask(task, {
-      open: () => shelf.open(task.job),
-      digest: host.digest,
-      afterSlice(done, total) {
-        control.cpuMs = clock.readMs() - startMs;
-        const now = performance.now();
-        if (now - reportedAt >= progressEveryMs && done < total) {
-          reportedAt = now;
-          report({ type: 'progress', id: task.id, done, total });
-        }
-        return !control.mustLeave;
-      },
-    });
-    if (outcome) outbox.add({ ...outcome, id: task.id });
-    control.cpuMs = clock.readMs() - startMs;
-    return outcome !== undefined;
-  }
-
-  function end(outbox: Outbox, yielded: boolean): void {
-    outbox.post();
-    report({ type: 'end', yielded });
+    end({ type: 'end', yielded: false });
   }
 
   port.on('message', (batch: Batch) => void serve(batch));

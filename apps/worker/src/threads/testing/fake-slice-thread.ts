@@ -1,10 +1,10 @@
-import { parentPort, workerData } from 'node:worker_threads';
+import { parentPort, threadId, workerData } from 'node:worker_threads';
 import { ControlBlock } from '../control-block.ts';
 import { serveBatches } from '../serve-batches.ts';
 import { openFakeKernel } from './fake-kernel.ts';
 
 if (!parentPort) throw new Error('fake-slice-thread runs in a worker thread only');
 serveBatches(parentPort, new ControlBlock(workerData.control), {
-  instantiate: openFakeKernel,
-  digest: (result) => `digest of ${result.arrays[0]?.bytes.join(' ')}`,
+  openKernel: openFakeKernel,
+  digest: (result) => `thread ${threadId}: ${result.arrays[0]?.bytes.join(' ')}`,
 });
