@@ -1,5 +1,7 @@
 import type { KernelManifest } from '@nightcone/models';
 
+export type { Field, FieldType, Json, KernelManifest, Specification } from '@nightcone/models';
+
 /** One array of a result, raw little-endian bytes. `ragged` names the i32 array that holds its offsets. */
 export interface ResultArrayData {
   name: string;
