@@ -26,7 +26,7 @@ export function encodeSpecification(manifest: KernelManifest, body: Body, tables
   view.setUint32(0, RECORD_MAGIC, true);
   view.setUint32(4, manifest.interface, true);
   view.setUint32(8, index, true);
-  writer.values.forEach((value, i) => view.setFloat64(HEADER_BYTES + 8 * i, value, true));
+  for (const [i, value] of writer.values.entries()) view.setFloat64(HEADER_BYTES + 8 * i, value, true);
   return bytes;
 }
 
@@ -69,49 +69,57 @@ class RecordWriter {
   private value(type: FieldType, value: Json | undefined, pointer: string): void {
     switch (type.type) {
       case 'number':
-        return this.number(value, pointer);
+        this.number(value, pointer);
+        break;
       case 'integer':
-        return this.integer(value, pointer);
+        this.integer(value, pointer);
+        break;
       case 'boolean':
         if (typeof value !== 'boolean') refuse(pointer, 'true or false is expected.');
         this.values.push(value ? 1 : 0);
-        return;
+        break;
       case 'enum':
         this.oneOf(type.values, value, pointer);
-        return;
+        break;
       case 'choice': {
         const object = asObject(value, pointer);
         const names = type.kinds.map((kind) => kind.kind);
         const index = this.oneOf(names, object.kind, `${pointer}/kind`);
-        return this.members(type.kinds[index]?.members ?? [], object, pointer);
+        this.members(type.kinds[index]?.members ?? [], object, pointer);
+        break;
       }
       case 'group':
-        return this.members(type.members, value, pointer);
+        this.members(type.members, value, pointer);
+        break;
       case 'axis':
-        return this.axis(value, pointer);
+        this.axis(value, pointer);
+        break;
       case 'auto-number':
         if (typeof value !== 'number') {
           this.oneOf(['auto'], asObject(value, pointer).kind, `${pointer}/kind`);
-          return;
+        } else {
+          this.values.push(1);
+          this.number(value, pointer);
         }
-        this.values.push(1);
-        return this.number(value, pointer);
+        break;
       case 'list':
         if (!Array.isArray(value)) refuse(pointer, 'a list is expected.');
         this.values.push(value.length);
         value.forEach((item, i) => {
           this.value(type.items, item, `${pointer}/${i}`);
         });
-        return;
+        break;
       case 'table':
-        return this.table(type.columns.length, value, pointer);
+        this.table(type.columns.length, value, pointer);
+        break;
     }
   }
 
   private axis(value: Json | undefined, pointer: string): void {
     if (typeof value === 'number') {
       this.values.push(0);
-      return this.number(value, pointer);
+      this.number(value, pointer);
+      return;
     }
     const axis = asObject(value, pointer);
     const kind = this.oneOf(['number', 'range', 'values', 'whole-zone'], axis.kind, `${pointer}/kind`);
