@@ -1,6 +1,6 @@
 import { Worker } from 'node:worker_threads';
 import { ControlBlock } from './control-block.ts';
-import type { Batch, Outcome, Task, ThreadReport } from './messages.ts';
+import type { Batch, Outcome, ThreadReport, ThreadTask } from './messages.ts';
 
 /** How a batch ended. Outcomes reported before the end count, whatever the end is. */
 export type BatchEnd =
@@ -51,7 +51,7 @@ export class ComputeThread {
     return this.#control.cpuMs;
   }
 
-  run(tasks: Task[], listener: BatchListener): Promise<BatchEnd> {
+  run(tasks: ThreadTask[], listener: BatchListener): Promise<BatchEnd> {
     if (this.#running) throw new Error('this thread has a batch in hand');
     this.#control.reset();
     return new Promise((resolve) => {
@@ -143,7 +143,7 @@ export class ComputeThread {
 }
 
 /** Payloads of an assembly are handed over where they own their buffer, and copied where they share one. */
-function payloadBuffers(tasks: Task[]): ArrayBuffer[] {
+function payloadBuffers(tasks: ThreadTask[]): ArrayBuffer[] {
   const payloads = tasks.flatMap((task) => (task.kind === 'assembly' ? task.payloads : []));
   return [
     ...new Set(payloads.map(({ buffer, byteLength }) => (buffer.byteLength === byteLength ? buffer : undefined))),

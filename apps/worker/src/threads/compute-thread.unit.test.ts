@@ -1,6 +1,6 @@
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { type BatchEnd, ComputeThread } from './compute-thread.ts';
-import type { Outcome, Task, ThreadJob } from './messages.ts';
+import type { Outcome, ThreadJob, ThreadTask } from './messages.ts';
 import { type FakeParameters, spinningModule } from './testing/fake-kernel.ts';
 
 const entry = new URL('./testing/fake-slice-thread.ts', import.meta.url);
@@ -16,9 +16,9 @@ const jobOf = (hash: string, parameters: FakeParameters): ThreadJob => ({
   specification: { model: 'fake', parameters, numerics: {} },
   tables: new Map(),
 });
-const wholeJob = (id: number, parameters: FakeParameters): Task => ({
+const wholeJob = (id: number, parameters: FakeParameters): ThreadTask => ({
   id,
-  kind: 'job',
+  kind: 'whole',
   job: jobOf(`j${id}`, parameters),
 });
 
@@ -28,7 +28,7 @@ interface Run {
   /** Resolves at the first progress report. */
   begun: Promise<void>;
 }
-function run(tasks: Task[]): Run {
+function run(tasks: ThreadTask[]): Run {
   const outcomes: Outcome[] = [];
   let begin: () => void;
   const begun = new Promise<void>((resolve) => {
@@ -46,8 +46,8 @@ describe('a compute thread', () => {
     const cut = jobOf('cut', { slices: 3 });
     const { end, outcomes } = run([
       wholeJob(0, { slices: 2 }),
-      { id: 1, kind: 'slices', job: cut, from: 1, to: 3 },
-      { id: 2, kind: 'slices', job: cut, from: 0, to: 1 },
+      { id: 1, kind: 'part', job: cut, from: 1, to: 3 },
+      { id: 2, kind: 'part', job: cut, from: 0, to: 1 },
       { id: 3, kind: 'assembly', job: cut, payloads: [Uint8Array.of(9), Uint8Array.of(8), Uint8Array.of(7)] },
     ]);
     expect(await end).toEqual({ kind: 'done' });

@@ -1,4 +1,5 @@
-import type { Certificate, ResultArrayData, TableColumns } from '@nightcone/kernel';
+import type { Certificate, TableColumns } from '@nightcone/kernel';
+import type { ArrayIdentity } from '@nightcone/provenance';
 
 /** A job as a thread needs it: inputs, and the kernel by its digest. */
 export interface ThreadJob {
@@ -8,17 +9,19 @@ export interface ThreadJob {
   tables: ReadonlyMap<string, TableColumns>;
 }
 
-/** `job`: every slice and the assembly. `slices`: from ≤ i < to. `assembly`: all payloads in slice order. */
-export type Task = { id: number; job: ThreadJob } & (
-  | { kind: 'job' }
-  | { kind: 'slices'; from: number; to: number }
+/** `whole`: every slice and the assembly. `part`: slices with from ≤ i < to. `assembly`: all payloads in slice order. */
+export type ThreadTask = { id: number; job: ThreadJob } & (
+  | { kind: 'whole' }
+  | { kind: 'part'; from: number; to: number }
   | { kind: 'assembly'; payloads: Uint8Array[] }
 );
 
+/** A complete result, its arrays described and digested, their bytes beside them in the same order. */
 export interface AssembledResult {
   digest: string;
-  arrays: ResultArrayData[];
+  arrays: (ArrayIdentity & { ragged?: string; bytes: number })[];
   certificate: Certificate;
+  data: Uint8Array[];
 }
 
 /** What became of a task. A refusal is the kernel's own, deterministic answer: a result like any other. */
@@ -30,7 +33,7 @@ export type Outcome = { id: number; cpuMs: number } & (
 
 export interface Batch {
   type: 'batch';
-  tasks: Task[];
+  tasks: ThreadTask[];
   /** Compiled modules that this thread has not seen yet, by digest. */
   modules: [string, WebAssembly.Module][];
 }

@@ -56,7 +56,7 @@ function buffersOf(outcomes: Outcome[]): ArrayBuffer[] {
   };
   for (const outcome of outcomes) {
     if (outcome.status === 'computed') outcome.payloads.forEach(add);
-    if (outcome.status === 'assembled') for (const array of outcome.result.arrays) add(array.bytes);
+    if (outcome.status === 'assembled') outcome.result.data.forEach(add);
   }
   return [...buffers];
 }

@@ -5,13 +5,13 @@ import { computeTask } from './compute-task.ts';
 import type { ControlBlock } from './control-block.ts';
 import { openCpuClock } from './cpu-clock.ts';
 import { KernelShelf } from './kernel-shelf.ts';
-import type { Batch, Task, ThreadReport } from './messages.ts';
+import type { AssembledResult, Batch, ThreadReport, ThreadTask } from './messages.ts';
 import { Outbox } from './outbox.ts';
 
 export interface KernelHost {
   /** `onProgress` is called from inside running slices and assemblies; what it throws ends them. */
   openKernel(module: WebAssembly.Module, onProgress: (done: number, total: number) => void): KernelInstance;
-  digest(result: KernelResult): string | Promise<string>;
+  describe(result: KernelResult): Promise<AssembledResult>;
 }
 
 /** Thrown through the kernel when the order is to leave the task in hand. */
@@ -29,7 +29,7 @@ export function serveBatches(port: MessagePort, control: ControlBlock, host: Ker
   const report = (message: ThreadReport) => port.postMessage(message);
   let reportedAt = 0;
   let startCpuMs = 0;
-  let task: Task | undefined;
+  let task: ThreadTask | undefined;
   let slices = { done: 0, total: 1 };
 
   function insideSlice(done: number, total: number): void {
@@ -42,12 +42,12 @@ export function serveBatches(port: MessagePort, control: ControlBlock, host: Ker
     report({ type: 'progress', id: task.id, fraction: Math.min(1, (slices.done + inSlice) / slices.total) });
   }
 
-  async function compute(next: Task, outbox: Outbox): Promise<void> {
+  async function compute(next: ThreadTask, outbox: Outbox): Promise<void> {
     task = next;
     slices = { done: 0, total: 1 };
     const result = await computeTask(next, {
       open: () => shelf.open(next.job),
-      digest: host.digest,
+      describe: host.describe,
       afterSlice(done, total) {
         slices = { done, total };
         insideSlice(0, 1);
