@@ -131,6 +131,15 @@ export async function startPostgres(purpose) {
   return address(state);
 }
 
+/** Makes the database if it is not there; returns its URL. */
+export function createDatabase(serverUrl, name) {
+  const bin = requirePostgres();
+  const ask = (sql) =>
+    execFileSync(path.join(bin, 'psql'), ['-XAtc', sql, serverUrl], { cwd: '/', encoding: 'utf8' }).trim();
+  if (ask(`select 1 from pg_database where datname = '${name}'`) !== '1') ask(`create database ${name}`);
+  return new URL(`/${name}`, serverUrl).href;
+}
+
 export function stopPostgres(purpose) {
   const state = readState(folders(purpose));
   if (state)
