@@ -1,4 +1,4 @@
 export * from './client.ts';
-export * from './listen.ts';
 export * from './migrate.ts';
+export * from './queries/listen.ts';
 export * as schema from './schema.ts';

@@ -1,7 +1,7 @@
 import type pg from 'pg';
 import PgBoss from 'pg-boss';
 import { createPool } from './client.ts';
-import { listen, type QueueMessage } from './listen.ts';
+import { listen, type QueueMessage } from './queries/listen.ts';
 import { beatLeases } from './queries/queue/beat-leases.ts';
 import { claimChunk } from './queries/queue/claim-chunk.ts';
 import { closeChunk, closeDeadChunk, dropLease, reapLeases } from './queries/queue/close-chunk.ts';
@@ -12,7 +12,7 @@ import { beatWorker, registerWorker, stopWorker } from './queries/workers/regist
 import type { Chunk, Heartbeat, Order, PartRecord, Task, WorkerDescription } from './queue-types.ts';
 import { isTransient, retry } from './retry.ts';
 
-export type { QueueMessage } from './listen.ts';
+export type { QueueMessage } from './queries/listen.ts';
 export type { SlotOffer } from './queries/queue/cut-chunk.ts';
 export * from './queue-types.ts';
 
