@@ -1,3 +1,4 @@
+export * from './axis-unit.ts';
 export * from './cells.ts';
 export * from './layout.ts';
 export * from './palette.ts';

@@ -1,7 +1,7 @@
 import { scaleLinear } from 'd3';
+import { displayUnit } from './axis-unit.ts';
 import { linePath, round } from './path.ts';
 import type { CellsMark, Mark, Plot, PointsMark, Role, Size } from './plot.ts';
-import { displayUnit } from './quantity.ts';
 import { symbolRuns, type TextRun } from './symbol.ts';
 import { axisTicks } from './ticks.ts';
 

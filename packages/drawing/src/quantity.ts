@@ -1,33 +1,10 @@
-/** Units for display: prefixes by powers of ten, digits by the error. Nothing here enters a hash. */
+import { displayUnit } from './axis-unit.ts';
 
-export interface DisplayUnit {
-  /** shown value = stored value × factor */
-  factor: number;
-  unit: string;
-}
-
-/** Prefixed forms of the stored units, smallest first: used below `below` stored units. */
-const prefixed: Record<string, { below: number; factor: number; unit: string }[]> = {
-  eV: [
-    { below: 1e-3, factor: 1e6, unit: 'µeV' },
-    { below: 1, factor: 1e3, unit: 'meV' },
-  ],
-  'eV nm': [{ below: 0.1, factor: 1e3, unit: 'meV nm' }],
-  'eV/nm': [{ below: 1, factor: 1e3, unit: 'meV/nm' }],
-  T: [{ below: 0.1, factor: 1e3, unit: 'mT' }],
-  nm: [{ below: 0.01, factor: 1e3, unit: 'pm' }],
-};
-
-/** The unit in which values up to `largest` (absolute, stored units) are read most easily. */
-export function displayUnit(unit: string, largest: number): DisplayUnit {
-  const size = Math.abs(largest);
-  const found = size > 0 ? prefixed[unit]?.find((candidate) => size < candidate.below) : undefined;
-  return found ? { factor: found.factor, unit: found.unit } : { factor: 1, unit };
-}
+/** Numbers for people: a sensible prefix, as many digits as the error supports, and the error. */
 
 const minus = (text: string) => text.replace(/^-/, '−').replace(/e-/, 'e−').replace(/e\+/, 'e');
 
-/** Fixed or scientific, whichever is shorter to read; a real minus sign. */
+/** Fixed or scientific, whichever is shorter to read; a real minus sign; no padding with zeros. */
 export function formatNumber(value: number, digits = 4): string {
   if (!Number.isFinite(value)) return '–';
   if (value === 0) return '0';
@@ -42,8 +19,8 @@ export function formatNumber(value: number, digits = 4): string {
 }
 
 /**
- * `226.406(4)`: the value to the digit of its error, the error's first digit in brackets (two when it is 1). Without an
- * error, four significant digits.
+ * `226.406(4)`: the value to the digit of its error, the error's first digit in brackets (two when it is 1), rounded
+ * up so that the text never claims more than the number. Without an error, five significant digits.
  */
 export function formatWithError(value: number, error: number | null | undefined): string {
   if (!Number.isFinite(value)) return '–';
@@ -58,7 +35,7 @@ export function formatWithError(value: number, error: number | null | undefined)
   return minus(`${value.toFixed(places)}(${Math.ceil(error * 10 ** places - 1e-9)})`);
 }
 
-/** Value, error and unit in one text, with a prefix chosen by the value (or by its error where the value is 0). */
+/** Value, error and unit in one text, with a prefix chosen by the value (or by its error where the value is smaller). */
 export function formatQuantity(value: number, unit: string, error?: number | null): string {
   const shown = displayUnit(unit, Math.max(Math.abs(value), error ?? 0));
   const number = formatWithError(value * shown.factor, error ? error * shown.factor : null);
