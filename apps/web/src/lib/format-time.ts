@@ -1,0 +1,65 @@
+/** CPU durations and clock times. Every clock time is in the group's zone, 24 hours. */
+
+/** 420 CPU-ms, 5.8 CPU-s, 14.1 CPU-min, 6.2 CPU-h. */
+export function formatCpu(ms: number): string {
+  const { value, unit } = cpuParts(ms);
+  return `${value} ${unit}`;
+}
+
+export function cpuParts(ms: number): { value: string; unit: string } {
+  const size = Math.abs(ms);
+  const [divisor, unit] =
+    size < 1000 && size > 0
+      ? [1, 'CPU-ms']
+      : size < 60_000
+        ? [1000, 'CPU-s']
+        : size < 6_000_000
+          ? [60_000, 'CPU-min']
+          : [3_600_000, 'CPU-h'];
+  const value = ms / divisor;
+  const text = Math.abs(value) >= 100 || divisor === 1 ? value.toFixed(0) : value.toFixed(1).replace(/\.0$/, '');
+  return { value: text.replace(/^-/, '−'), unit };
+}
+
+const formatters = new Map<string, Intl.DateTimeFormat>();
+function formatter(timeZone: string, options: Intl.DateTimeFormatOptions): Intl.DateTimeFormat {
+  const key = `${timeZone} ${JSON.stringify(options)}`;
+  let made = formatters.get(key);
+  if (!made) {
+    made = new Intl.DateTimeFormat('en-GB', { ...options, timeZone, hourCycle: 'h23' });
+    formatters.set(key, made);
+  }
+  return made;
+}
+
+/** 23:42 */
+export const formatClock = (at: string | Date, timeZone: string): string =>
+  formatter(timeZone, { hour: '2-digit', minute: '2-digit' }).format(new Date(at));
+
+/** 2026-02-12 */
+export function formatDate(at: string | Date, timeZone: string): string {
+  const parts = formatter(timeZone, { year: 'numeric', month: '2-digit', day: '2-digit' }).formatToParts(new Date(at));
+  const part = (type: string) => parts.find((each) => each.type === type)?.value ?? '';
+  return `${part('year')}-${part('month')}-${part('day')}`;
+}
+
+/** The clock alone within 20 hours of now, with its date otherwise. */
+export function formatMoment(at: string | Date, timeZone: string, now: Date = new Date()): string {
+  const date = new Date(at);
+  const near = Math.abs(date.getTime() - now.getTime()) < 20 * 3_600_000;
+  return near ? formatClock(date, timeZone) : `${formatDate(date, timeZone)} ${formatClock(date, timeZone)}`;
+}
+
+/** ISO date and time with seconds and the zone, for the tooltip. */
+export function formatExact(at: string | Date, timeZone: string): string {
+  const date = new Date(at);
+  const time = formatter(timeZone, { hour: '2-digit', minute: '2-digit', second: '2-digit' }).format(date);
+  return `${formatDate(date, timeZone)} ${time} ${timeZone}`;
+}
+
+/** ± 12 min, ± 40 s, ± 2 h */
+export function formatUncertainty(seconds: number): string {
+  if (seconds < 60) return `± ${Math.max(1, Math.ceil(seconds))} s`;
+  if (seconds < 5400) return `± ${Math.ceil(seconds / 60)} min`;
+  return `± ${Math.ceil(seconds / 3600)} h`;
+}
