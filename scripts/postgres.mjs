@@ -131,13 +131,20 @@ export async function startPostgres(purpose) {
   return address(state);
 }
 
+function ask(serverUrl, sql) {
+  const psql = path.join(requirePostgres(), 'psql');
+  return execFileSync(psql, ['-XAtc', sql, serverUrl], { cwd: '/', encoding: 'utf8' }).trim();
+}
+
 /** Makes the database if it is not there; returns its URL. */
 export function createDatabase(serverUrl, name) {
-  const bin = requirePostgres();
-  const ask = (sql) =>
-    execFileSync(path.join(bin, 'psql'), ['-XAtc', sql, serverUrl], { cwd: '/', encoding: 'utf8' }).trim();
-  if (ask(`select 1 from pg_database where datname = '${name}'`) !== '1') ask(`create database ${name}`);
+  if (ask(serverUrl, `select 1 from pg_database where datname = '${name}'`) !== '1')
+    ask(serverUrl, `create database ${name}`);
   return new URL(`/${name}`, serverUrl).href;
+}
+
+export function dropDatabase(serverUrl, name) {
+  ask(serverUrl, `drop database if exists ${name} with (force)`);
 }
 
 export function stopPostgres(purpose) {

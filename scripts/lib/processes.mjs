@@ -6,12 +6,18 @@ import { localDir, root } from './paths.mjs';
 /** Children of a start script: logs to files, ended together, none left behind. */
 export class Processes {
   #children = new Map();
+  #logDir;
   #stopping = false;
+
+  /** Logs go to .local/logs/<folder>/<name>.log. */
+  constructor(folder = 'start') {
+    this.#logDir = path.join(localDir, 'logs', folder);
+  }
 
   /** Starts a TypeScript entry. `ready` is a pattern in its output; its match is what the promise gives. */
   start(name, entry, { args = [], env = {}, ready, onExit } = {}) {
-    fs.mkdirSync(path.join(localDir, 'logs'), { recursive: true });
-    const logFile = path.join(localDir, 'logs', `${name}.log`);
+    fs.mkdirSync(this.#logDir, { recursive: true });
+    const logFile = path.join(this.#logDir, `${name}.log`);
     const log = fs.createWriteStream(logFile, { flags: 'w' });
     const child = spawn(process.execPath, ['--import', 'tsx', entry, ...args], {
       cwd: root,
