@@ -1,3 +1,6 @@
+import { setTimeout as wait } from 'node:timers/promises';
+import type { JobView } from '@nightcone/contracts';
+
 /** Signs in through the stand-in as a browser would, by following its redirects with a jar of cookies. */
 export class BrowserlessSession {
   #cookies = new Map<string, string>();
@@ -40,5 +43,15 @@ export class BrowserlessSession {
     const text = await answer.text();
     if (!answer.ok) throw new Error(`${method} ${path} was refused (${answer.status}): ${text}`);
     return (text === '' ? undefined : JSON.parse(text)) as T;
+  }
+
+  /** Digest of a job's result, as soon as there is one; throws when the job failed. */
+  async resultOf(hash: string): Promise<string> {
+    for (;;) {
+      const job = await this.call<JobView>('GET', `/jobs/${hash}`);
+      if (job.resultDigest) return job.resultDigest;
+      if (job.state === 'failed') throw new Error(`Job ${hash} failed: ${job.failure?.text}`);
+      await wait(100);
+    }
   }
 }
