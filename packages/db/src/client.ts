@@ -27,6 +27,9 @@ export function createPool(connectionString: string, { max = 10, onError = () =>
   return pool;
 }
 
+/** For those who hand a pool on: the session store of the API. */
+export type Pool = pg.Pool;
+
 export const createDb = (pool: pg.Pool) => drizzle(pool, { schema, casing: 'snake_case' });
 export type Db = ReturnType<typeof createDb>;
 /** Inside `db.transaction(async (tx) => …)`. */

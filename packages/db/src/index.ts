@@ -1,4 +1,12 @@
 export * from './client.ts';
 export * from './migrate.ts';
+export * from './queries/accounts/people.ts';
+export * from './queries/accounts/sessions.ts';
+export * from './queries/accounts/tokens.ts';
+export * from './queries/audit.ts';
+export * from './queries/kernels/find-kernel.ts';
 export * from './queries/listen.ts';
+export * from './queries/queue/settings.ts';
+export * from './queries/tables/find-table.ts';
+export * from './retry.ts';
 export * as schema from './schema.ts';

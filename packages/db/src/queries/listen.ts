@@ -7,10 +7,11 @@ export const channel = 'nightcone';
  * What is told on the channel, after the commit of what it tells about:
  * `work` something may be started · `submission ID` its state or counts changed · `job HASH` its state changed ·
  * `cancel ID` and `pause ID` a submission must stop now · `quota ACCOUNT` a balance changed ·
+ * `session ACCOUNT` a session or token of it ended ·
  * `connected` (from the listener itself) messages may have been missed before this one.
  */
 export interface QueueMessage {
-  topic: 'work' | 'submission' | 'job' | 'cancel' | 'pause' | 'quota' | 'connected';
+  topic: 'work' | 'submission' | 'job' | 'cancel' | 'pause' | 'quota' | 'session' | 'connected';
   id: string;
 }
 

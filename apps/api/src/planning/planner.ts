@@ -1,0 +1,1 @@
+export type Planner = Record<never, never>;
