@@ -1,6 +1,12 @@
 import { setTimeout as wait } from 'node:timers/promises';
 
-const codeOf = (error: unknown): string => (error as { code?: string }).code ?? '';
+/** drizzle wraps what the driver threw: the cause has the code. */
+const driverError = (error: unknown): { code?: string; message?: string } =>
+  (error instanceof Error && error.cause instanceof Error ? error.cause : error) as { code?: string; message?: string };
+const codeOf = (error: unknown): string => driverError(error).code ?? '';
+/** The driver's own errors have no code; neither has a programming error, which no repetition mends. */
+const saysConnection = (error: unknown): boolean =>
+  /connection|timeout|not queryable/i.test(driverError(error).message ?? '');
 
 /** The connection was lost, or the server is starting, stopping or gone: the same statement may work later. */
 export const isTransient = (error: unknown): boolean => {
@@ -8,7 +14,7 @@ export const isTransient = (error: unknown): boolean => {
   // five characters are an SQLSTATE: of those only lost connections (08…) and operator intervention (57P…) pass by themselves
   return code.length === 5 && /^[0-9A-Z]{5}$/.test(code)
     ? /^(08|57P)/.test(code)
-    : code === '' || /^E[A-Z]+$/.test(code);
+    : (code === '' && saysConnection(error)) || /^E[A-Z]+$/.test(code);
 };
 
 /** A deadlock or a serialisation failure: the whole transaction may be tried again at once. */

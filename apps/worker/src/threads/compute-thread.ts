@@ -25,7 +25,6 @@ interface Running {
 
 export interface ThreadOptions {
   entry: URL;
-  module(digest: string): WebAssembly.Module;
   /** A thread that has not left its slice this long after `stop` is terminated. */
   leaveMs?: number;
   /** JavaScript heap of the thread; the memory of kernels and arrays lies outside it. */
@@ -39,7 +38,6 @@ export interface ThreadOptions {
 export class ComputeThread {
   readonly #control = new ControlBlock();
   #worker: Worker | undefined;
-  #sent = new Set<string>();
   #running: Running | undefined;
   #terminating = false;
   cpuSource: 'thread' | 'wall' | undefined;
@@ -56,12 +54,7 @@ export class ComputeThread {
     this.#control.reset();
     return new Promise((resolve) => {
       this.#running = { listener, resolve };
-      const worker = this.#started();
-      const modules = [...new Set(tasks.map((task) => task.job.kernel))]
-        .filter((digest) => !this.#sent.has(digest))
-        .map((digest): [string, WebAssembly.Module] => [digest, this.options.module(digest)]);
-      for (const [digest] of modules) this.#sent.add(digest);
-      worker.postMessage({ type: 'batch', tasks, modules } satisfies Batch, payloadBuffers(tasks));
+      this.#started().postMessage({ type: 'batch', tasks } satisfies Batch, payloadBuffers(tasks));
     });
   }
 
@@ -101,7 +94,6 @@ export class ComputeThread {
     worker.on('exit', (code) => {
       this.#worker = undefined;
       this.#terminating = false;
-      this.#sent = new Set();
       this.#end((running) =>
         running.stopReason !== undefined
           ? { kind: 'stopped', reason: running.stopReason }

@@ -6,14 +6,15 @@ import { type FakeParameters, spinningModule } from './testing/fake-kernel.ts';
 const entry = new URL('./testing/fake-slice-thread.ts', import.meta.url);
 let thread: ComputeThread;
 beforeEach(() => {
-  thread = new ComputeThread({ entry, module: () => spinningModule, heapMb: 64 });
+  thread = new ComputeThread({ entry, heapMb: 64 });
 });
 afterEach(() => thread.close());
 
 const jobOf = (hash: string, parameters: FakeParameters): ThreadJob => ({
   hash,
   kernel: 'k',
-  specification: { model: 'fake', parameters, numerics: {} },
+  module: spinningModule,
+  specification: JSON.stringify({ model: 'fake', parameters, numerics: {} }),
   tables: new Map(),
 });
 const wholeJob = (id: number, parameters: FakeParameters): ThreadTask => ({

@@ -1,11 +1,15 @@
 import type { Certificate, TableColumns } from '@nightcone/kernel';
 import type { ArrayIdentity } from '@nightcone/provenance';
 
-/** A job as a thread needs it: inputs, and the kernel by its digest. */
+/** A job as a thread needs it. */
 export interface ThreadJob {
   hash: string;
+  /** Digest of the kernel. */
   kernel: string;
-  specification: { model: string; parameters: object; numerics: object };
+  /** Compiled once in this process; a message carries a reference to its code. */
+  module: WebAssembly.Module;
+  /** Canonical JSON; as text it crosses to the thread at a third of the cost. */
+  specification: string;
   tables: ReadonlyMap<string, TableColumns>;
 }
 
@@ -34,8 +38,6 @@ export type Outcome = { id: number; cpuMs: number } & (
 export interface Batch {
   type: 'batch';
   tasks: ThreadTask[];
-  /** Compiled modules that this thread has not seen yet, by digest. */
-  modules: [string, WebAssembly.Module][];
 }
 
 export type ThreadReport =

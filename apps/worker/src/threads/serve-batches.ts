@@ -1,6 +1,7 @@
 import { setPriority } from 'node:os';
 import type { MessagePort } from 'node:worker_threads';
 import type { KernelInstance, KernelResult } from '@nightcone/kernel';
+import { errorText } from '../error-text.ts';
 import { computeTask } from './compute-task.ts';
 import type { ControlBlock } from './control-block.ts';
 import { openCpuClock } from './cpu-clock.ts';
@@ -29,6 +30,7 @@ export function serveBatches(port: MessagePort, control: ControlBlock, host: Ker
   const report = (message: ThreadReport) => port.postMessage(message);
   let reportedAt = 0;
   let startCpuMs = 0;
+  let outbox: Outbox | undefined;
   let task: ThreadTask | undefined;
   let slices = { done: 0, total: 1 };
 
@@ -37,12 +39,13 @@ export function serveBatches(port: MessagePort, control: ControlBlock, host: Ker
     const now = performance.now();
     if (now - reportedAt < progressEveryMs || !task) return;
     reportedAt = now;
+    outbox?.postIfDue();
     control.cpuMs = clock.readMs() - startCpuMs;
     const inSlice = total > 0 ? Math.min(1, done / total) : 0;
     report({ type: 'progress', id: task.id, fraction: Math.min(1, (slices.done + inSlice) / slices.total) });
   }
 
-  async function compute(next: ThreadTask, outbox: Outbox): Promise<void> {
+  async function compute(next: ThreadTask): Promise<void> {
     task = next;
     slices = { done: 0, total: 1 };
     const result = await computeTask(next, {
@@ -53,27 +56,26 @@ export function serveBatches(port: MessagePort, control: ControlBlock, host: Ker
         insideSlice(0, 1);
       },
     });
-    outbox.add({ ...result, id: next.id });
+    outbox?.add({ ...result, id: next.id });
     control.cpuMs = clock.readMs() - startCpuMs;
   }
 
   async function serve(batch: Batch): Promise<void> {
-    for (const [digest, module] of batch.modules) shelf.addModule(digest, module);
     startCpuMs = clock.readMs();
-    const outbox = new Outbox(port, clock);
+    outbox = new Outbox(port, clock);
     const end = (message: ThreadReport) => {
-      outbox.post();
+      outbox?.post();
       report(message);
     };
     for (const next of batch.tasks) {
       if (control.mustYield) return end({ type: 'end', yielded: true });
       try {
-        await compute(next, outbox);
+        await compute(next);
       } catch (error) {
         // Nothing is known of the instance's memory after a trap or an abandoned slice.
         shelf.discard(next.job.kernel);
         if (error instanceof TaskLeft) return end({ type: 'end', yielded: true });
-        return end({ type: 'trapped', message: error instanceof Error ? error.message : String(error) });
+        return end({ type: 'trapped', message: errorText(error) });
       }
     }
     end({ type: 'end', yielded: false });

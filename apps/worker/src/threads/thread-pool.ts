@@ -2,7 +2,6 @@ import { ComputeThread } from './compute-thread.ts';
 
 export interface PoolOptions {
   size: number;
-  module(digest: string): WebAssembly.Module;
   entry?: URL;
 }
 
@@ -10,8 +9,8 @@ export interface PoolOptions {
 export class ThreadPool {
   readonly threads: readonly ComputeThread[];
 
-  constructor({ size, module, entry = new URL('./slice-thread.ts', import.meta.url) }: PoolOptions) {
-    this.threads = Array.from({ length: size }, () => new ComputeThread({ entry, module }));
+  constructor({ size, entry = new URL('./slice-thread.ts', import.meta.url) }: PoolOptions) {
+    this.threads = Array.from({ length: size }, () => new ComputeThread({ entry }));
   }
 
   async close(): Promise<void> {

@@ -1,0 +1,69 @@
+import type { Chunk, Queue, SlotOffer, Task } from '@nightcone/db/queue';
+import type { Logger } from 'pino';
+import { errorText } from '../../error-text.ts';
+import type { ComputeThread } from '../../threads/compute-thread.ts';
+import type { ThreadJob } from '../../threads/messages.ts';
+import type { WakeSignal } from '../../wake-signal.ts';
+import { ChunkRun } from './chunk-run.ts';
+
+const pollMs = 2000;
+
+export interface SlotOptions {
+  queue: Queue;
+  thread: ComputeThread;
+  offer: SlotOffer;
+  jobOf(task: Task): Promise<ThreadJob>;
+  wake: WakeSignal;
+  /** Attempts of the whole process that have not ended. */
+  runs: Set<ChunkRun>;
+  stopping: AbortSignal;
+  log: Logger;
+}
+
+/** Takes and computes chunks until the worker stops. While one is being recorded the next one is fetched and begun. */
+export async function runSlot({ queue, thread, offer, jobOf, wake, runs, stopping, log }: SlotOptions): Promise<void> {
+  let settling: Promise<void> | undefined;
+
+  async function settle(run: ChunkRun): Promise<void> {
+    const { id: chunk, attempt, submissionId: submission } = run.chunk;
+    try {
+      const crash = await run.settle();
+      if (crash !== undefined) log.warn({ chunk, attempt, submission, reason: crash }, 'chunk crashed');
+      else log.debug({ chunk, attempt, submission, cpuMs: Math.round(run.cpuMs) }, 'chunk ended');
+    } catch (error) {
+      // The chunk keeps its lease, without heartbeats from now on: it is taken away and tried again like a lost one.
+      log.error({ chunk, attempt, submission, reason: errorText(error) }, 'chunk could not be ended');
+    } finally {
+      runs.delete(run);
+      settling = undefined;
+    }
+    // A person at his cap may go on now, in any slot.
+    wake.wake();
+  }
+
+  async function compute(chunk: Chunk): Promise<void> {
+    const run = new ChunkRun({ chunk, thread, queue, jobOf });
+    runs.add(run);
+    await run.compute();
+    await settling;
+    settling = settle(run);
+  }
+
+  async function next(): Promise<Chunk | null> {
+    try {
+      return await queue.next(offer);
+    } catch (error) {
+      log.error({ reason: errorText(error) }, 'no work could be taken');
+      return null;
+    }
+  }
+
+  while (!stopping.aborted) {
+    const chunk = await next();
+    if (chunk) await compute(chunk);
+    // Its end may free what held the next chunk back, a cap or the assembly of a job.
+    else if (settling) await settling;
+    else await wake.sleep(pollMs);
+  }
+  await settling;
+}
