@@ -111,6 +111,7 @@ export const LastNight = z.object({
     }),
   ),
 });
+export type LastNight = z.infer<typeof LastNight>;
 
 const bySubmission = {
   params: z.object({ id: Id }),
