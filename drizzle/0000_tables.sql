@@ -226,8 +226,6 @@ CREATE TABLE "submissions" (
 	"held" "int4multirange" DEFAULT '{}' NOT NULL,
 	"open_chunks" integer DEFAULT 0 NOT NULL,
 	"parked_points" integer DEFAULT 0 NOT NULL,
-	"total_parts" integer NOT NULL,
-	"done_parts" integer DEFAULT 0 NOT NULL,
 	"done_points" integer DEFAULT 0 NOT NULL,
 	"failed_points" integer DEFAULT 0 NOT NULL,
 	"total_slices" bigint NOT NULL,

@@ -53,11 +53,9 @@ export const submissions = pgTable(
     held: multirange().notNull().default('{}'),
     openChunks: integer().notNull().default(0),
     parkedPoints: integer().notNull().default(0),
-    /** Parts to do at submission, and those recorded or dropped since: the reservation shrinks in step. */
-    totalParts: integer().notNull(),
-    doneParts: integer().notNull().default(0),
     donePoints: integer().notNull().default(0),
     failedPoints: integer().notNull().default(0),
+    /** Slices to do at submission, and those recorded or dropped since: the reservation shrinks in step. */
     totalSlices: bigint({ mode: 'number' }).notNull(),
     doneSlices: bigint({ mode: 'number' }).notNull().default(0),
     /** Reference CPU: the estimate of everything, and per part as learned from the chunks done so far. */
