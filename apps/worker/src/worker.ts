@@ -1,11 +1,13 @@
-import { createDb, createPool, findOptionalKernelBytes, findOptionalTable, retry } from '@nightcone/db';
 import { heartbeatMs, Queue, type QueueMessage } from '@nightcone/db/queue';
 import type { Logger } from 'pino';
+import { Database } from './database.ts';
+import { errorText } from './error-text.ts';
 import { KernelStore } from './features/kernels/kernel-store.ts';
 import type { ChunkRun } from './features/queue/chunk-run.ts';
 import { runSlot } from './features/queue/run-slot.ts';
 import { TableStore } from './features/tables/table-store.ts';
 import { describeWorker } from './features/workers/describe-worker.ts';
+import { measureSpeed } from './features/workers/measure-speed.ts';
 import { jobInputs } from './job-inputs.ts';
 import { ThreadPool } from './threads/thread-pool.ts';
 import { WakeSignal } from './wake-signal.ts';
@@ -24,32 +26,50 @@ export interface WorkerOptions {
 /** A worker process: joins the database, computes in its slots what the queue hands out, and leaves in good order. */
 export class ComputeWorker {
   readonly #log: Logger;
+  readonly #slotCount: number;
+  readonly #databaseUrl: string;
   readonly #threads: ThreadPool;
-  readonly #queue: Queue;
+  readonly #database: Database;
+  readonly #kernels: KernelStore;
   readonly #wake = new WakeSignal();
   readonly #runs = new Set<ChunkRun>();
   readonly #stopping = new AbortController();
-  readonly #pool: ReturnType<typeof createPool>;
+  #queue: Queue | undefined;
   #slots: Promise<void>[] = [];
   #timer: NodeJS.Timeout | undefined;
+  #left = false;
   #stopped: Promise<void> | undefined;
 
   constructor({ databaseUrl, slots, log, threadEntry }: WorkerOptions) {
+    this.#databaseUrl = databaseUrl;
+    this.#slotCount = slots;
     this.#log = log;
     this.#threads = new ThreadPool({ size: slots, entry: threadEntry });
-    const onError = (error: Error) => log.warn({ reason: error.message }, 'trouble with the database');
-    this.#pool = createPool(databaseUrl, { max: 1, onError });
-    this.#queue = new Queue({ connectionString: databaseUrl, worker: describeWorker(slots, 1), onError });
+    this.#database = new Database(databaseUrl, this.#onDatabaseError);
+    this.#kernels = new KernelStore((digest) => this.#database.kernelBytes(digest));
   }
 
   async start(): Promise<void> {
-    const { worker } = this.#queue;
-    await this.#queue.start();
-    this.#queue.listen((message) => this.#hear(message));
-    const jobOf = this.#jobInputs();
+    try {
+      await this.#join();
+    } catch (error) {
+      // A stop ends whatever the start was waiting for.
+      if (!this.#stopping.signal.aborted) throw error;
+    }
+  }
+
+  async #join(): Promise<void> {
+    const worker = describeWorker(this.#slotCount, await this.#measureSpeed());
+    if (this.#stopping.signal.aborted) return;
+    const queue = new Queue({ connectionString: this.#databaseUrl, worker, onError: this.#onDatabaseError });
+    this.#queue = queue;
+    await queue.start();
+    queue.listen((message) => this.#hear(message));
+    const tables = new TableStore((digest) => this.#database.table(digest));
+    const jobOf = jobInputs(this.#kernels, tables);
     this.#slots = this.#threads.threads.map((thread, number) =>
       runSlot({
-        queue: this.#queue,
+        queue,
         thread,
         // One slot of several is kept for what is quickly done, so that long parts never fill everything.
         offer: { express: number === 1, memoryBytes: worker.memoryBytes / worker.slots },
@@ -60,8 +80,9 @@ export class ComputeWorker {
         log: this.#log,
       }),
     );
-    this.#beatLater();
-    this.#log.info({ worker: worker.id, slots: worker.slots, memoryBytes: worker.memoryBytes }, 'worker joined');
+    this.#beatLater(queue);
+    const { id, slots, memoryBytes, speedFactor } = worker;
+    this.#log.info({ worker: id, slots, memoryBytes, speedFactor }, 'worker joined');
   }
 
   /** Ends at the next end of a task, after the grace time in the middle of one; what is unfinished is given back. */
@@ -80,20 +101,28 @@ export class ComputeWorker {
     }, graceMs);
     await Promise.all(this.#slots);
     clearTimeout(impatience);
+    this.#left = true;
     clearTimeout(this.#timer);
     await this.#threads.close();
-    await this.#queue.stop();
-    await this.#pool.end();
+    await this.#queue?.stop();
+    await this.#database.close();
     this.#log.info('worker left');
   }
 
-  #jobInputs() {
-    const db = createDb(this.#pool);
-    const patiently = <T>(query: () => Promise<T>) =>
-      retry(query, (error) => this.#log.warn({ reason: error.message }, 'trouble with the database'));
-    const kernels = new KernelStore((digest) => patiently(() => findOptionalKernelBytes(db, digest)));
-    const tables = new TableStore((digest) => patiently(() => findOptionalTable(db, digest)));
-    return jobInputs(kernels, tables);
+  readonly #onDatabaseError = (error: Error): void => {
+    this.#log.warn({ reason: errorText(error) }, 'trouble with the database');
+  };
+
+  async #measureSpeed(): Promise<number> {
+    const digest = await this.#database.currentKernel();
+    const thread = this.#threads.threads[0];
+    if (digest === undefined || !thread) return 1;
+    try {
+      return await measureSpeed(await this.#kernels.load(digest), thread);
+    } catch (error) {
+      this.#log.warn({ reason: errorText(error) }, 'the speed of this machine could not be measured');
+      return 1;
+    }
   }
 
   #hear({ topic, id }: QueueMessage): void {
@@ -104,19 +133,26 @@ export class ComputeWorker {
     }
   }
 
-  #beatLater(): void {
-    this.#timer = setTimeout(() => void this.#beat().finally(() => this.#beatLater()), heartbeatMs);
+  #beatLater(queue: Queue): void {
+    this.#timer = setTimeout(async () => {
+      try {
+        await this.#beat(queue);
+      } catch (error) {
+        this.#log.error({ reason: errorText(error) }, 'heartbeat failed');
+      }
+      if (!this.#left) this.#beatLater(queue);
+    }, heartbeatMs);
   }
 
   /** Signs of life and orders for all running chunks; then the leases of workers that gave none are taken away. */
-  async #beat(): Promise<void> {
+  async #beat(queue: Queue): Promise<void> {
     const runs = [...this.#runs];
-    const orders = await this.#queue.beat(runs.map((run) => run.heartbeat()));
+    const orders = await queue.beat(runs.map((run) => run.heartbeat()));
     for (const run of runs) {
       const order = orders.get(run.chunk.id);
       if (order && this.#runs.has(run)) run.obey(order);
     }
-    const lost = await this.#queue.reap();
+    const lost = await queue.reap();
     if (lost > 0) this.#log.warn({ leases: lost }, 'took the leases of a silent worker');
   }
 }

@@ -26,9 +26,7 @@ export class Recorder {
   add(records: PartRecord[]): void {
     this.#waiting.push(...records);
     for (const record of records) this.#bytes += bytesOf(record);
-    const dueIn = this.#writtenAt + writeEveryMs - performance.now();
-    if (dueIn <= 0 || this.#waiting.length >= writeEveryParts || this.#bytes >= writeEveryBytes) void this.#write();
-    else this.#timer ??= setTimeout(() => void this.#write(), dueIn);
+    this.#schedule();
   }
 
   /** Resolves when everything is written, or nothing can be. */
@@ -37,12 +35,20 @@ export class Recorder {
     while (this.#writing || (this.#waiting.length > 0 && !this.#failed)) await this.#write();
   }
 
+  #schedule(): void {
+    if (this.#writing || this.#failed || this.#waiting.length === 0) return;
+    const dueIn = this.#writtenAt + writeEveryMs - performance.now();
+    if (dueIn <= 0 || this.#waiting.length >= writeEveryParts || this.#bytes >= writeEveryBytes) void this.#write();
+    else this.#timer ??= setTimeout(() => void this.#write(), dueIn);
+  }
+
   /** One write at a time: what comes meanwhile goes with the next one. Never rejects. */
   #write(): Promise<void> {
     clearTimeout(this.#timer);
     this.#timer = undefined;
     this.#writing ??= this.#writeWaiting().finally(() => {
       this.#writing = undefined;
+      this.#schedule();
     });
     return this.#writing;
   }
