@@ -83,3 +83,14 @@ export function base64(bytes: Uint8Array): string {
   }
   return parts.join('');
 }
+
+/** A PNG with its resolution stated (chunk pHYs, pixels per metre), placed behind the header of 33 bytes. */
+export function withDpi(png: Uint8Array, dpi: number): Uint8Array {
+  const perMetre = Math.round(dpi / 0.0254);
+  const phys = chunk('pHYs', [...word(perMetre), ...word(perMetre), 1]);
+  const out = new Uint8Array(png.length + phys.length);
+  out.set(png.subarray(0, 33));
+  out.set(phys, 33);
+  out.set(png.subarray(33), 33 + phys.length);
+  return out;
+}

@@ -14,11 +14,13 @@ export interface SvgOptions {
   metadata?: Record<string, string>;
   /** Physical width in mm; the view box stays in px. */
   widthMm?: number;
+  /** Style sheet to embed, e.g. font faces for a renderer that has none of the fonts. */
+  style?: string;
 }
 
-const serif = "'STIX Two Text Variable','STIX Two Text',serif";
-const sans = "'Atkinson Hyperlegible Next Variable','Atkinson Hyperlegible Next',sans-serif";
-const mono = "'JetBrains Mono Variable','JetBrains Mono',monospace";
+const serif = "'STIX Two Text',serif";
+const sans = "'Atkinson Hyperlegible Next',sans-serif";
+const mono = "'JetBrains Mono',monospace";
 const escapes: Record<string, string> = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;' };
 export const escapeXml = (text: string) => text.replace(/[&<>"]/g, (c) => escapes[c] as string);
 
@@ -34,6 +36,7 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
     `<svg xmlns="http://www.w3.org/2000/svg"${physical} viewBox="0 0 ${size.width} ${size.height}" role="img">`,
     `<title>${escapeXml(plot.caption)}</title>`,
     metadata(options.metadata ?? {}),
+    ...(options.style ? [`<style>${options.style}</style>`] : []),
     `<defs><clipPath id="data"><rect x="${data.x}" y="${data.y}" width="${data.width}" height="${data.height}"/></clipPath></defs>`,
     `<rect width="${size.width}" height="${size.height}" fill="${palette.ground}"/>`,
     ...geometry.cells.map((cells) => cellsSvg(geometry, cells, palette)),

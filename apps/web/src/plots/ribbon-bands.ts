@@ -70,9 +70,7 @@ export function buildRibbonBands(data: ResultData): BuiltPlot {
             ...(near
               ? [{ label: `above Landau n = ${near.text}`, value: formatQuantity(energy - near.at, 'eV') }]
               : []),
-            ...(estimate === undefined
-              ? []
-              : [{ label: 'error estimate', value: formatQuantity(estimate, 'eV') }]),
+            ...(estimate === undefined ? [] : [{ label: 'error estimate', value: formatQuantity(estimate, 'eV') }]),
           ],
         };
       },

@@ -1,0 +1,79 @@
+import type { BuiltPlot } from './built-plot.ts';
+import { buildLandauFan } from './landau-fan.ts';
+import { buildFermiEnergy, buildLandauDensity } from './landau-maps.ts';
+import type { ResultData } from './result-data.ts';
+import { buildRibbonBands } from './ribbon-bands.ts';
+import { buildRibbonChannels } from './ribbon-channels.ts';
+import { buildRibbonDensity } from './ribbon-density.ts';
+
+/** One way to look at a result: which arrays it needs (with their companions where there are any) and how it is built. */
+export interface View {
+  id: string;
+  label: string;
+  needs: readonly string[];
+  optional: readonly string[];
+  build(data: ResultData): BuiltPlot;
+}
+
+const byModel: Record<string, readonly View[]> = {
+  'landau-levels': [
+    {
+      id: 'fan',
+      label: 'levels',
+      needs: ['energies'],
+      optional: ['energiesValid', 'levelIndex', 'fieldT'],
+      build: buildLandauFan,
+    },
+    {
+      id: 'density',
+      label: 'density of states',
+      needs: ['density'],
+      optional: ['fieldT', 'energyEv'],
+      build: buildLandauDensity,
+    },
+    {
+      id: 'filling',
+      label: 'Fermi energy',
+      needs: ['fermiEnergy'],
+      optional: ['fermiEnergyValid', 'fieldT', 'carrierPerNm2'],
+      build: buildFermiEnergy,
+    },
+  ],
+  'continuum-ribbon': [
+    {
+      id: 'bands',
+      label: 'subbands',
+      needs: ['energies', 'velocities'],
+      optional: ['errorEstimate', 'errorEstimateValid', 'valleyWeight', 'kPerNm'],
+      build: buildRibbonBands,
+    },
+    {
+      id: 'density',
+      label: 'densities',
+      needs: ['densityA', 'densityB', 'positionNm'],
+      optional: ['densityEnergyEv', 'densityKIndex', 'kPerNm'],
+      build: buildRibbonDensity,
+    },
+    {
+      id: 'channels',
+      label: 'channels',
+      needs: ['channels'],
+      optional: ['channelsValid', 'energyEv'],
+      build: buildRibbonChannels,
+    },
+  ],
+};
+
+/** The views that a result with these arrays can show. An empty array (no states asked for) is no view. */
+export function viewsOf(model: string, arrays: readonly { name: string; shape: readonly number[] }[]): View[] {
+  const filled = new Set(
+    arrays.filter((array) => array.shape.every((length) => length > 0)).map((array) => array.name),
+  );
+  return (byModel[model] ?? []).filter((view) => view.needs.every((name) => filled.has(name)));
+}
+
+/** Names of the arrays to load for a view: needs, optional ones that exist, and offsets of ragged ones. */
+export function arraysOf(view: View, arrays: readonly { name: string; ragged?: string | undefined }[]): string[] {
+  const wanted = arrays.filter(({ name }) => view.needs.includes(name) || view.optional.includes(name));
+  return [...new Set(wanted.flatMap(({ name, ragged }) => (ragged ? [name, ragged] : [name])))];
+}
