@@ -7,6 +7,7 @@ export function Page({
   kicker,
   lead,
   actions,
+  wide = false,
   children,
 }: {
   /** For the browser's tab. */
@@ -15,6 +16,8 @@ export function Page({
   kicker?: ReactNode;
   lead?: ReactNode;
   actions?: ReactNode;
+  /** The heading spans sheet and margin column (Tonight). */
+  wide?: boolean;
   children?: ReactNode;
 }) {
   useEffect(() => {
@@ -22,7 +25,7 @@ export function Page({
   }, [title]);
   return (
     <div className="pt-3 pb-10">
-      <div className="margin:grid margin:grid-cols-[minmax(0,1fr)_308px] margin:gap-x-11">
+      <div className={wide ? '' : 'margin:grid margin:grid-cols-[minmax(0,1fr)_308px] margin:gap-x-11'}>
         <header className="flex flex-wrap items-end justify-between gap-x-8 gap-y-3 margin:pr-0">
           <div className="min-w-0">
             {kicker ? <p className="num text-ink3 text-small">{kicker}</p> : null}
@@ -37,7 +40,7 @@ export function Page({
         </header>
         <div
           aria-hidden
-          className="relative hidden margin:block margin:before:absolute margin:before:top-0 margin:before:bottom-0 margin:before:-left-5 margin:before:w-px margin:before:bg-hair"
+          className={`${wide ? '' : 'margin:block '}relative hidden margin:before:absolute margin:before:top-0 margin:before:bottom-0 margin:before:-left-5 margin:before:w-px margin:before:bg-hair`}
         />
       </div>
       {children}

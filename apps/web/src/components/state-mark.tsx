@@ -38,6 +38,7 @@ const shapeOf: Record<string, Shape> = {
   parked: 'diamond',
   tonight: 'crescent',
   finished: 'square',
+  'finished, some failed': 'cross',
   done: 'square',
   reused: 'hollow',
   failed: 'cross',
