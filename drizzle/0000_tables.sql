@@ -135,7 +135,6 @@ CREATE TABLE "kernels" (
 	"manifest" jsonb NOT NULL,
 	"state" text DEFAULT 'released' NOT NULL,
 	"released_at" timestamp with time zone DEFAULT now() NOT NULL,
-	CONSTRAINT "kernels_version_unique" UNIQUE("version"),
 	CONSTRAINT "kernels_state" CHECK (state in ('current', 'released', 'retired')),
 	CONSTRAINT "kernels_digest" CHECK (digest = encode(sha256(bytes), 'hex'))
 );

@@ -77,7 +77,7 @@ BEGIN
   END IF;
   SELECT coalesce((SELECT weekly_grant_ms FROM turns WHERE account_id = person), s.weekly_grant_ms) INTO grant_ms;
   PERFORM queue.post(found_id, 'grant', grant_ms, 0, 0, 'weekly grant');
-  IF least(overrun, grant_ms) > 0 THEN
+  IF overrun > 0 AND grant_ms > 0 THEN
     PERFORM queue.post(found_id, 'adjust', -least(overrun, grant_ms), 0, 0, 'overrun of the week before');
   END IF;
   RETURN found_id;

@@ -27,8 +27,9 @@ BEGIN
   RETURN true;
 END $$;
 
--- broken-off points go back to the backlog; the reservation grows again by what they need. How many; null if the quota is short
-CREATE FUNCTION queue.retry_broken_off(submission uuid) RETURNS int LANGUAGE plpgsql AS $$
+-- broken-off points go back to the backlog; the reservation grows again by what they need. If the quota is short by that
+-- much, short_ms says so, and the caller must roll back
+CREATE FUNCTION queue.retry_broken_off(submission uuid, OUT points int, OUT short_ms bigint) LANGUAGE plpgsql AS $$
 DECLARE
   s submissions;
   again int[];
@@ -36,11 +37,13 @@ DECLARE
   slices bigint;
   more bigint;
 BEGIN
+  points := 0;
+  short_ms := 0;
   SELECT * INTO STRICT s FROM submissions WHERE id = submission FOR NO KEY UPDATE;
-  IF s.state = 'cancelled' THEN RETURN 0; END IF;
+  IF s.state = 'cancelled' THEN RETURN; END IF;
   WITH p AS (UPDATE submission_points SET outcome = NULL WHERE submission_id = submission AND outcome = 'broken-off' RETURNING point)
     SELECT array_agg(point) INTO again FROM p;
-  IF again IS NULL THEN RETURN 0; END IF;
+  IF again IS NULL THEN RETURN; END IF;
   SELECT range_agg(int4range(i, i + 1)), sum(queue.slices_of(i, s.parts_per_job, j.slices)) INTO back, slices
     FROM queue.numbers(queue.parts_of(again, s.parts_per_job)) i
     JOIN submission_points sp ON sp.submission_id = submission AND sp.point = i / queue.width(s.parts_per_job)
@@ -53,14 +56,17 @@ BEGIN
     UPDATE submissions SET balance_id = queue.balance_of(account_id) WHERE id = submission RETURNING balance_id INTO s.balance_id;
   END IF;
   more := greatest(0, ceil(s.reserved_at_start_ms::numeric * greatest(0, s.total_slices - s.done_slices + slices) / greatest(1, s.total_slices))::bigint - s.reserved_ms);
-  IF NOT queue.reserve(s.balance_id, more, 'retry of broken-off points', submission) THEN RETURN NULL; END IF;
+  IF NOT queue.reserve(s.balance_id, more, 'retry of broken-off points', submission) THEN
+    short_ms := more;
+    RETURN;
+  END IF;
   UPDATE submissions SET state = CASE state WHEN 'done' THEN 'active' ELSE state END, finished_at = NULL, todo = todo + coalesce(back, '{}'),
       done_slices = done_slices - slices, reserved_ms = reserved_ms + more,
       done_points = done_points - cardinality(again), failed_points = failed_points - cardinality(again)
     WHERE id = submission;
   IF s.parts_per_job > 1 THEN PERFORM queue.add_assemblies(submission, again); END IF;
   PERFORM pg_notify('nightcone', 'work'), pg_notify('nightcone', 'submission ' || submission);
-  RETURN cardinality(again);
+  points := cardinality(again);
 END $$;
 
 -- how each point of a submission stands, in one word

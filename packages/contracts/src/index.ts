@@ -1,3 +1,4 @@
+export * from './computing-order.ts';
 export * from './endpoint.ts';
 export * from './endpoints.ts';
 export * from './features/accounts.ts';
@@ -8,6 +9,10 @@ export * from './features/kernels.ts';
 export * from './features/models.ts';
 export * from './features/queue.ts';
 export * from './features/sweeps.ts';
+export * from './forecast/forecast.ts';
+export * from './forecast/why-not-started.ts';
 export * from './limits.ts';
+export * from './night/night-window.ts';
+export * from './night/zoned-time.ts';
 export * from './problem.ts';
 export * from './states.ts';

@@ -8,7 +8,7 @@ export const kernels = pgTable(
   'kernels',
   {
     digest: text().primaryKey(),
-    version: text().notNull().unique(),
+    version: text().notNull(),
     bytes: bytea().notNull(),
     manifest: jsonb().notNull(),
     state: text({ enum: kernelStates }).notNull().default('released'),
