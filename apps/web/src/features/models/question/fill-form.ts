@@ -1,6 +1,5 @@
 import type { SweepAxisInput } from '@nightcone/contracts';
 import {
-  decimalOf,
   type Field,
   type Json,
   parseRange,
@@ -106,5 +105,5 @@ function isRange(values: readonly number[], text: string): boolean {
   const range = parseRange(text, '', values.length);
   if (!range.ok) return false;
   const made = rangeValues(range.value);
-  return made.every((value, i) => value === values[i] && decimalOf(value).digits !== undefined);
+  return made.every((value, i) => value === values[i]);
 }
