@@ -19,7 +19,10 @@ export function diagnosticLength(): usize {
 }
 
 function put(byte: u32): void {
-  if (length < CAPACITY) store<u8>(buffer + length++, <u8>byte);
+  if (length < CAPACITY) {
+    store<u8>(buffer + length, <u8>byte);
+    length++;
+  }
 }
 
 /** Appends a literal. Characters beyond U+FFFF do not occur in our texts. */

@@ -9,14 +9,7 @@
  * Accuracy  Passes through the rows; second order or better in between; never overshoots them.
  * Cost      A few divisions per row.   Fails  never.
  */
-@inline
-function at(values: usize, i: i32): f64 {
-  return load<f64>(values + (<usize>i << 3));
-}
-@inline
-function put(values: usize, i: i32, value: f64): void {
-  store<f64>(values + (<usize>i << 3), value);
-}
+import { at, put } from "./doubles";
 
 function endSlope(h0: f64, h1: f64, d0: f64, d1: f64): f64 {
   const slope = ((2 * h0 + h1) * d0 - h0 * d1) / (h0 + h1);

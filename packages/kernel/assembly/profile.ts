@@ -8,6 +8,7 @@
  */
 import { reserve } from "./arena";
 import { diagnose, fail } from "./diagnostic";
+import { at } from "./doubles";
 import { fillMonotoneSlopes, hermiteValue } from "./monotone-cubic";
 import { readBlock, readInteger, readNumber } from "./record";
 import { INVALID_PARAMETER, OK, OUTSIDE_TABLE } from "./status";
@@ -35,11 +36,6 @@ export class Profile {
   phase: f64;
   /** OK, or INVALID_PARAMETER when edges or rows do not increase or a count does not fit. */
   status: i32;
-}
-
-@inline
-function at(values: usize, i: i32): f64 {
-  return load<f64>(values + (<usize>i << 3));
 }
 
 function increases(values: usize, count: i32): bool {

@@ -70,7 +70,8 @@ export function addArray(index: i32, dtype: u32, rank: i32, n0: i32, n1: i32 = 1
 
 /** Numbers of the manifest's `certificate`, one call each, in its order, before the first check. */
 export function addCertificateNumber(value: f64): void {
-  store<f64>(certificate + (<usize>certificateLength++ << 3), value);
+  store<f64>(certificate + (<usize>certificateLength << 3), value);
+  certificateLength++;
 }
 
 /** One check that applies: its position in the manifest's checks, and |computed − expected| ≤ tolerance decides. */

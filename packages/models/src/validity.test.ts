@@ -1,7 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import type { ValidityNote } from './definition.ts';
 import { continuumRibbon } from './definitions/continuum-ribbon.ts';
-import { landauLevels } from './definitions/landau-levels.ts';
+import { landauLevels } from './definitions/landau-levels/definition.ts';
 import { formatQuantity } from './format-quantity.ts';
 import { manifestOf } from './manifest.ts';
 import { parseSpecification } from './parse-specification.ts';

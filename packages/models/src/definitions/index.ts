@@ -1,6 +1,6 @@
 import type { ModelDefinition } from '../definition.ts';
 import { continuumRibbon } from './continuum-ribbon.ts';
-import { landauLevels } from './landau-levels.ts';
+import { landauLevels } from './landau-levels/definition.ts';
 
 /** All models, in the order of their index in the kernel: append only. */
 export const models: readonly ModelDefinition[] = [landauLevels, continuumRibbon];
