@@ -30,7 +30,7 @@ BEGIN
 END $$;
 
 -- An attempt broke. When it was the last, the suspect part ends as broken off and the rest of the chunk goes back.
-CREATE FUNCTION queue.break_off(chunk uuid, reason text, lost bigint, last_attempt boolean) RETURNS void LANGUAGE plpgsql AS $$
+CREATE FUNCTION queue.break_off(chunk uuid, why text, lost bigint, last_attempt boolean) RETURNS void LANGUAGE plpgsql AS $$
 DECLARE
   k chunks;
   s submissions;
@@ -44,7 +44,7 @@ BEGIN
   suspect := lower(k.parts - queue.recorded(k)) / queue.width(s.parts_per_job);
   IF suspect IS NOT NULL THEN
     INSERT INTO execution_events (execution_id, text)
-      SELECT id, format('attempt %s ended: %s', k.attempt, reason) FROM executions
+      SELECT id, format('attempt %s ended: %s', k.attempt, why) FROM executions
       WHERE submission_id = s.id AND point = suspect AND state = 'running';
   END IF;
   IF NOT last_attempt THEN
@@ -52,7 +52,7 @@ BEGIN
     RETURN;
   END IF;
   IF suspect IS NOT NULL AND s.state <> 'cancelled' THEN
-    UPDATE executions SET state = 'broken-off', finished_at = now(), failure_code = 'broken-off', failure_text = reason
+    UPDATE executions SET state = 'broken-off', finished_at = now(), failure_code = 'broken-off', failure_text = why
       WHERE submission_id = s.id AND point = suspect AND state = 'running' RETURNING job_hash INTO stopped;
     PERFORM queue.rest_jobs(ARRAY[stopped]);
     PERFORM queue.settle(s.id, chunk, 0, queue.conclude(s.id, ARRAY[suspect], 'broken-off'), 'broken off');

@@ -8,7 +8,7 @@ import { closeChunk, closeDeadChunk, dropLease, reapLeases } from './queries/que
 import { cutChunk, type SlotOffer } from './queries/queue/cut-chunk.ts';
 import { readPayloads } from './queries/queue/read-payloads.ts';
 import { recordParts } from './queries/queue/record-parts.ts';
-import { beatWorker, registerWorker, stopWorker } from './queries/workers/register-worker.ts';
+import { beatWorker, mayWork, registerWorker, stopWorker } from './queries/workers/register-worker.ts';
 import type { Chunk, Heartbeat, Order, PartRecord, Task, WorkerDescription } from './queue-types.ts';
 import { isTransient, retry } from './retry.ts';
 
@@ -110,6 +110,7 @@ export class Queue {
       for (;;) {
         const chunk = await this.#transaction(async (client) => {
           const db = inTransaction(client);
+          if (!(await mayWork(client, this.worker.id))) return null;
           let [ticket] = await this.#boss.fetch(tickets, { db });
           if (!ticket) {
             const id = await cutChunk(client, offer);

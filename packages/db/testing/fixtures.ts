@@ -139,3 +139,20 @@ export async function ledgerErrors(db: Db): Promise<unknown[]> {
         or b.used_ms <> coalesce((select sum(s.used_us / 1000) from submissions s where s.balance_id = b.id), 0)`);
   return rows;
 }
+
+/** The pause before the next attempt is over. */
+export async function endRetryPauses(db: Db): Promise<void> {
+  await db.execute(sql`update pgboss.job set start_after = now() - interval '1 s' where state = 'retry'`);
+}
+
+/** All leases had their last heartbeat too long ago. */
+export async function ageLeases(db: Db): Promise<void> {
+  await db.execute(sql`update leases set beat_at = now() - interval '1 hour'`);
+}
+
+/** A chunk that must be there. */
+export async function takeChunk(queue: Queue, offer = anySlot): Promise<Chunk> {
+  const chunk = await queue.next(offer);
+  if (!chunk) throw new Error('the queue has nothing for this slot');
+  return chunk;
+}

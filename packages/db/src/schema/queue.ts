@@ -1,4 +1,4 @@
-import { submissionStates } from '@nightcone/contracts';
+import { type PointState, submissionStates } from '@nightcone/contracts';
 import { sql } from 'drizzle-orm';
 import {
   bigint,
@@ -9,6 +9,7 @@ import {
   integer,
   jsonb,
   pgTable,
+  pgView,
   primaryKey,
   real,
   smallint,
@@ -244,3 +245,13 @@ export const turnClock = pgTable(
   },
   () => [check('turn_clock_one', sql.raw('one'))],
 );
+
+/** How each point of a submission stands, in one word. */
+export const pointStates = pgView('point_states', {
+  submissionId: uuid().notNull(),
+  point: integer().notNull(),
+  place: integer().notNull(),
+  jobHash: text().notNull(),
+  sweptValues: jsonb().$type<unknown[]>().notNull(),
+  state: text().$type<PointState>().notNull(),
+}).existing();

@@ -11,15 +11,23 @@ export interface PastWork {
   busyMs: number;
 }
 
-/** What was computed between two instants, in bins of equal length, from the records of finished parts. */
+/**
+ * What was computed between two instants, in bins of equal length, from the records of finished parts. A record says when
+ * a part ended and what CPU it took: it lay on a slot for at least that long before.
+ */
 export async function listPastWork(db: Queryable, from: Date, to: Date, binMinutes: number): Promise<PastWork[]> {
-  const bin = `${binMinutes} minutes`;
+  const bin = sql`${`${binMinutes} minutes`}::interval`;
+  const origin = sql`${from.toISOString()}::timestamptz`;
+  const end = sql`${to.toISOString()}::timestamptz`;
   const { rows } = await db.execute<Record<keyof PastWork, unknown>>(sql`
-    select p.submission_id as "submissionId", s.account_id as "accountId", s.title,
-           extract(epoch from date_bin(${bin}::interval, p.at, ${from.toISOString()}::timestamptz)) * 1000 as "from",
-           sum(p.cpu_us) / 1000.0 as "busyMs"
-      from parts p join submissions s on s.id = p.submission_id
-     where p.at >= ${from.toISOString()} and p.at < ${to.toISOString()}
+    with done as (
+      select p.submission_id, greatest(p.at - p.cpu_us * interval '1 microsecond', ${origin}) as start, least(p.at, ${end}) as stop
+        from parts p where p.at > ${origin} and p.at - p.cpu_us * interval '1 microsecond' < ${end})
+    select d.submission_id as "submissionId", s.account_id as "accountId", s.title,
+           extract(epoch from b.bin) * 1000 as "from",
+           sum(extract(epoch from least(d.stop, b.bin + ${bin}) - greatest(d.start, b.bin))) * 1000 as "busyMs"
+      from done d join submissions s on s.id = d.submission_id,
+           generate_series(date_bin(${bin}, d.start, ${origin}), d.stop, ${bin}) as b(bin)
      group by 1, 2, 3, 4 order by 4, 1`);
   return rows.map((row) => ({
     submissionId: row.submissionId as string,

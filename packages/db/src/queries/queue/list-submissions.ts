@@ -24,6 +24,8 @@ const derived = {
     where e.submission_id = ${submissions.id} and e.state = 'running' and e.started_at is not null)`.mapWith(Number),
   leases: sql<number>`(select count(*) from leases l where l.submission_id = ${submissions.id})`.mapWith(Number),
   weight: sql<number>`coalesce(${turns.weight}, 1)`,
+  /** Place among the person's own submissions of equal priority; the smallest goes first. */
+  ownTag: sql<number>`greatest(${submissions.virtualTime}, coalesce(${turns.clock}, 0))`,
   personSlots: turns.maxSlots,
   personRunning: sql<number>`coalesce(${turns.running}, 0)`.mapWith(Number),
   quotaSpent: sql<boolean>`${quotaBalances.usedMs} >= ${quotaBalances.grantedMs}`,

@@ -21,8 +21,10 @@ export async function findCapacity(db: Queryable) {
       slots: sql`coalesce(sum(${workers.slots}), 0)`.mapWith(Number),
       busy: sql`coalesce(sum(${busy}), 0)`.mapWith(Number),
       memoryBytes: sql`coalesce(max(${workers.memoryBytes}), 0)`.mapWith(Number),
+      /** Reference CPU per CPU, averaged over slots. */
+      speed: sql`coalesce(sum(${workers.speedFactor} * ${workers.slots}) / sum(${workers.slots}), 1)`.mapWith(Number),
     })
     .from(workers)
     .where(and(sql`queue.may_work(${workers.id})`, gt(workers.heartbeatAt, sql`now() - interval '30 seconds'`)));
-  return row ?? { workers: 0, slots: 0, busy: 0, memoryBytes: 0 };
+  return row ?? { workers: 0, slots: 0, busy: 0, memoryBytes: 0, speed: 1 };
 }

@@ -1,4 +1,4 @@
-import type { Pool } from 'pg';
+import type { ClientBase, Pool } from 'pg';
 import type { WorkerDescription } from '../../queue-types.ts';
 
 /** A process joins. Called again after a lost answer it changes nothing. */
@@ -23,4 +23,10 @@ export async function stopWorker(pool: Pool, id: string): Promise<void> {
   await pool.query(`update workers set state = 'stopped', stopped_at = now() where id = $1 and state <> 'stopped'`, [
     id,
   ]);
+}
+
+/** Whether this worker takes work now: not while it winds down, nor outside its own hours. */
+export async function mayWork(client: ClientBase, id: string): Promise<boolean> {
+  const { rows } = await client.query<{ may: boolean }>('select queue.may_work($1) as may', [id]);
+  return rows[0]?.may === true;
 }
