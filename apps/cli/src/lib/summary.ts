@@ -4,26 +4,33 @@ import { groupedShortHash, type ResultRecord } from '@nightcone/provenance';
 /** A result in a few lines for people. */
 export function summaryText({ specification, jobHash, resultDigest, result, notes }: ResultRecord): string {
   const { arrays, certificate } = result;
-  const broken = certificate.checks.filter(({ holds }) => !holds);
+  const held = certificate.checks.filter(({ holds }) => holds).length;
   const lines = [
     `model   ${specification.model}`,
     `job     ${jobHash}  ${groupedShortHash(jobHash)}`,
     `result  ${resultDigest}  ${groupedShortHash(resultDigest)}`,
     `kernel  ${specification.kernel}`,
     '',
-    ...arrays.map(({ name, dims, shape, unit }) =>
-      `  ${name.padEnd(22)} ${shapeText(dims, shape).padEnd(36)} ${unit}`.trimEnd(),
-    ),
+    ...columns(arrays.map(({ name, dims, shape, unit }) => [name, shapeText(dims, shape), unit])),
     '',
-    `checks  ${certificate.checks.length - broken.length} of ${certificate.checks.length} hold`,
-    ...certificate.checks.map(
-      ({ code, computed, expected, tolerance, holds }) =>
-        `  ${holds ? 'holds ' : 'BROKEN'} ${code}: ${formatQuantity(computed, '', 9)} for ${formatQuantity(expected, '', 9)} ± ${formatQuantity(tolerance, '', 2)}`,
-    ),
+    ...columns(Object.entries(certificate.numbers).map(([name, value]) => [name, formatQuantity(value, '', 3)])),
+    `checks  ${held} of ${certificate.checks.length} hold`,
+    ...columns(certificate.checks.map((check) => [check.holds ? 'holds' : 'BROKEN', check.code, checkText(check)])),
     ...notes.map(({ severity, text }) => `${severity}: ${text}`),
   ];
   return `${lines.join('\n')}\n`;
 }
 
+type Check = ResultRecord['result']['certificate']['checks'][number];
+
+const checkText = ({ computed, expected, tolerance }: Check) =>
+  `${formatQuantity(computed, '', 9)} for ${formatQuantity(expected, '', 9)} ± ${formatQuantity(tolerance, '', 2)}`;
+
 const shapeText = (dims: string[], shape: number[]) =>
   dims.length === 0 ? 'one number' : dims.map((dim, i) => `${dim} ${shape[i]}`).join(' × ');
+
+/** Rows as indented lines whose cells stand below each other. */
+function columns(rows: string[][]): string[] {
+  const width = (i: number) => Math.max(...rows.map((row) => row[i]?.length ?? 0));
+  return rows.map((row) => `  ${row.map((cell, i) => cell.padEnd(width(i))).join('  ')}`.trimEnd());
+}
