@@ -51,6 +51,19 @@ describe.each(smallQuestions)('$name', ({ name, specification }) => {
   });
 });
 
+test('what the kernel refuses ends with 3 and its reason, on one thread and on several', async () => {
+  const specification = {
+    model: 'landau-levels',
+    parameters: { system: { kind: 'bilayer', v3Ratio: 0.1 }, fieldT: { kind: 'values', values: [1, 2] } },
+    numerics: { method: { kind: 'closed-form' } },
+  };
+  for (const threads of ['1', '2']) {
+    const refused = await run(['compute', '-', '--threads', threads], { stdin: specification });
+    expect(refused).toMatchObject({ exitCode: 3, out: '' });
+    expect(refused.err).toMatch(/^method-unavailable: /);
+  }
+});
+
 describe('verify ends with 4', () => {
   const result = join(folder, 'result.json');
   const tampered = join(folder, 'tampered.json');

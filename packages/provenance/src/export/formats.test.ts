@@ -1,12 +1,13 @@
 import type { ResultArrayData } from '@nightcone/kernel';
 import fc from 'fast-check';
+import { zipSync } from 'fflate';
 import { describe, expect, test } from 'vitest';
 import { resultDigest } from '../result-digest.ts';
 import { sha256Hex } from '../sha256.ts';
 import { csvChunks } from './csv.ts';
 import { jsonChunks, jsonText } from './json.ts';
 import { npyBytes, readNpy } from './npy.ts';
-import { npzChunks, readNpz } from './npz.ts';
+import { npzChunks, readNpz, recordMember } from './npz.ts';
 import { numberText } from './number-text.ts';
 import { readResultJson } from './read-json.ts';
 import type { ResultRecord } from './result-record.ts';
@@ -161,6 +162,8 @@ describe('NumPy', () => {
 
   test('what is no archive of ours is refused', () => {
     expect(() => readNpz(new Uint8Array(100))).toThrow(/no readable archive/);
+    const packed = zipSync({ [recordMember]: new TextEncoder().encode(JSON.stringify({ arrays: [] }).padEnd(1000)) });
+    expect(() => readNpz(packed)).toThrow(/has no nightcone.json/);
   });
 });
 

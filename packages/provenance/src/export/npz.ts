@@ -50,7 +50,8 @@ function* members({
 export function readNpz(file: Uint8Array): ResultRecord {
   let files: Record<string, Uint8Array>;
   try {
-    files = unzipSync(file);
+    // members are stored, never compressed: nothing can swell beyond the file
+    files = unzipSync(file, { filter: ({ compression }) => compression === 0 });
   } catch (error) {
     throw new SyntaxError(`no readable archive: ${(error as Error).message}`);
   }
