@@ -1,6 +1,7 @@
 import { mkdtemp, readFile, stat } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
+import { addCustomSection, loadCurrentKernel } from '@nightcone/kernel/node';
 import { npzChunks, type ResultRecord, resultDigest } from '@nightcone/provenance';
 import { afterEach, describe, expect, test } from 'vitest';
 import { run } from '../testing/run.ts';
@@ -182,5 +183,34 @@ describe('reproduce on the queue', () => {
     expect(await run(['reproduce', hash], await serve(rerun('identical', 'broken-off')))).toMatchObject({
       exitCode: 1,
     });
+  });
+});
+
+describe('reproduce here', () => {
+  const specification = { model: 'landau-levels', parameters: { fieldT: 5, levels: 2, broadening: { kind: 'none' } } };
+
+  test('downloads specification and kernel, computes, compares', async () => {
+    const { bytes } = await loadCurrentKernel();
+    const printed = JSON.parse((await run(['compute', '-', '--json'], { stdin: specification })).out);
+    const job = {
+      state: 'finished',
+      kernel: printed.kernel,
+      resultDigest: printed.resultDigest,
+      specification: printed.specification,
+    };
+    let module: Uint8Array = bytes;
+    const { env } = await serve({
+      [`GET /jobs/${printed.jobHash}`]: () => ({ body: job }),
+      [`GET /jobs/${hash}`]: () => ({ body: job }),
+      [`GET /kernels/${printed.kernel}/module`]: () => ({ bytes: module }),
+    });
+    const here = () => run(['reproduce', printed.jobHash, '--here'], { env });
+    expect(await here()).toMatchObject({ exitCode: 0, out: `identical  ${printed.resultDigest}\n` });
+    const mislabelled = await run(['reproduce', hash, '--here'], { env });
+    expect(mislabelled).toMatchObject({ exitCode: 4, err: expect.stringContaining('specification has the hash') });
+    job.resultDigest = 'd'.repeat(64);
+    expect(await here()).toMatchObject({ exitCode: 4, out: `different  ${printed.resultDigest}\n` });
+    module = addCustomSection(bytes, 'other', new Uint8Array(1));
+    expect(await here()).toMatchObject({ exitCode: 4, err: expect.stringContaining('another kernel') });
   });
 });
