@@ -47,5 +47,8 @@ export type Answer<E extends Endpoint> = E extends { response: infer R extends z
     ? undefined
     : Download;
 
-/** The one shape of a verb. `Verb<typeof endpoints.getJob>` types its context, input and answer. */
-export type Handler<E extends Endpoint> = (given: { ctx: Context<E>; input: Input<E> }) => Promise<Answer<E>>;
+/** The one shape of a verb; a long answer may be streamed as JSON text. `Verb<typeof endpoints.getJob>` types its context, input and answer. */
+export type Handler<E extends Endpoint> = (given: {
+  ctx: Context<E>;
+  input: Input<E>;
+}) => Promise<Answer<E> | Download>;

@@ -1,10 +1,9 @@
 import { createServer } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { createDb, createPool, listen } from '@nightcone/db';
 import { pino } from 'pino';
 import { createApp } from './app.ts';
-import { Changes } from './changes.ts';
 import { BadEnvironment, type Config, readConfig } from './config.ts';
+import { startServices } from './start-services.ts';
 
 function configOrExit(): Config {
   try {
@@ -18,17 +17,8 @@ function configOrExit(): Config {
 
 const config = configOrExit();
 const logger = pino({ level: config.logLevel, base: undefined });
-const pool = createPool(config.databaseUrl, {
-  onError: (error) => logger.warn({ reason: error.message }, 'database connection lost'),
-});
-const changes = new Changes();
-const listener = listen(
-  config.databaseUrl,
-  (message) => changes.tell(message),
-  (error) => logger.warn({ reason: error.message }, 'listening connection lost'),
-);
-const services = { config, db: createDb(pool), logger, changes, planner: {} };
-const server = createServer(createApp(services, pool));
+const running = startServices(config, logger);
+const server = createServer(createApp(running.services, running.pool));
 
 server.once('error', (error) => {
   logger.fatal({ reason: error.message }, 'cannot listen');
@@ -48,7 +38,6 @@ async function stop(): Promise<void> {
   setTimeout(() => server.closeAllConnections(), 1000).unref();
   server.closeIdleConnections();
   await closed;
-  await listener.stop();
-  await pool.end();
+  await running.stop();
 }
 for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => void stop());

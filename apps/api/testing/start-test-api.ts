@@ -2,7 +2,7 @@
 
 import { createServer } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { createDb, createPool, listen, saveSettings } from '@nightcone/db';
+import { type Db, saveSettings } from '@nightcone/db';
 import { createTestDatabase } from '@nightcone/db/testing';
 import { pino } from 'pino';
 import request from 'supertest';
@@ -10,8 +10,8 @@ import { demoAccounts } from '../../../docker-free-dev/sign-in-provider/demo-acc
 import { type Provider, startProvider } from '../../../docker-free-dev/sign-in-provider/start-provider.ts';
 import type {} from '../../../packages/db/testing/server.ts';
 import { createApp } from '../src/app.ts';
-import { Changes } from '../src/changes.ts';
 import { type Config, readConfig } from '../src/config.ts';
+import { startServices } from '../src/start-services.ts';
 
 export type Login = 'theorist' | 'theorist-2' | 'reviewer' | 'admin' | 'newcomer';
 export type Agent = ReturnType<typeof request.agent>;
@@ -19,7 +19,7 @@ export type Agent = ReturnType<typeof request.agent>;
 export interface TestApi {
   url: string;
   provider: Provider;
-  db: ReturnType<typeof createDb>;
+  db: Db;
   databaseUrl: string;
   /** A caller without a session. */
   anonymous: () => Agent;
@@ -62,8 +62,8 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
     checkResponses: true,
     ...change,
   };
-  const pool = createPool(database.url);
-  const changes = new Changes();
+  const running = startServices(config, pino({ level: config.logLevel }));
+  const { db, changes } = running.services;
   const heard = new Promise<void>((resolve) => {
     const stopWaiting = changes.onChange(({ topic }) => {
       if (topic !== 'connected') return;
@@ -71,12 +71,8 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
       resolve();
     });
   });
-  const listener = listen(database.url, (message) => changes.tell(message));
-  const logger = pino({ level: config.logLevel });
-  const db = createDb(pool);
   await saveSettings(db, nobody, { groupName: 'Test group', timeZone: 'Europe/Berlin' });
-  const services = { config, db, logger, changes, planner: {} };
-  server.on('request', createApp(services, pool));
+  server.on('request', createApp(running.services, running.pool));
   await heard;
 
   const anonymous = () => request.agent(url);
@@ -98,9 +94,8 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
   const stop = async () => {
     server.closeAllConnections();
     await new Promise((resolve) => server.close(resolve));
-    await listener.stop();
+    await running.stop();
     await provider.close();
-    await pool.end();
     await database.drop();
   };
   return { url, provider, db, databaseUrl: database.url, anonymous, as, stop };

@@ -16,3 +16,4 @@ export * from './night/night-window.ts';
 export * from './night/zoned-time.ts';
 export * from './problem.ts';
 export * from './states.ts';
+export * from './turn-order.ts';

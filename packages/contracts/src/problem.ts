@@ -33,6 +33,7 @@ export const commonProblems = {
   'not-found': 404,
   conflict: 409,
   'idempotency-mismatch': 409,
+  'result-evicted': 409,
   'body-too-large': 413,
   'invalid-specification': 422,
   'validity-refused': 422,

@@ -11,6 +11,7 @@ const titles: Record<ProblemCode, string> = {
   'not-found': 'Not found',
   conflict: 'Something else changed it first',
   'idempotency-mismatch': 'Same key, other request',
+  'result-evicted': 'The arrays are not kept',
   'body-too-large': 'The request is too large',
   'invalid-specification': 'The specification is not valid',
   'validity-refused': 'Outside the model’s range of validity',

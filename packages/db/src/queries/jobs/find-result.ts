@@ -38,22 +38,41 @@ export async function readArray(db: Queryable, sha256: string): Promise<Buffer> 
   return rows.length === 1 ? (rows[0] as Buffer) : Buffer.concat(rows);
 }
 
-/** Bytes [from, from + length) of an array that lie in one stored row. */
 const rowBytes = 4_194_304;
+const batch = 500;
 
-export async function readArraySlice(db: Queryable, sha256: string, from: number, length: number): Promise<Buffer> {
-  const pieces: Buffer[] = [];
-  for (let at = from; at < from + length; ) {
-    const number = Math.floor(at / rowBytes);
-    const offset = at - number * rowBytes;
-    const size = Math.min(from + length - at, rowBytes - offset);
-    const [row] = await db
-      .select({ data: sql<Buffer>`substring(${resultArrayRows.data} from ${offset + 1}::int for ${size}::int)` })
-      .from(resultArrayRows)
-      .where(and(eq(resultArrayRows.sha256, sha256), eq(resultArrayRows.number, number)));
-    if (!row || row.data.length === 0) break;
-    pieces.push(row.data);
-    at += row.data.length;
+export interface ArraySlice {
+  sha256: string;
+  /** In bytes. */
+  from: number;
+  length: number;
+}
+
+/** Pieces of many arrays at once, in the order asked for; a piece that is not stored comes back short. */
+export async function readArraySlices(db: Queryable, slices: readonly ArraySlice[]): Promise<Buffer[]> {
+  // A slice that runs over the end of a stored row is cut there and put together again.
+  const pieces = slices.flatMap(({ sha256, from, length }, slice) => {
+    const cut: { slice: number; sha256: string; number: number; offset: number; size: number }[] = [];
+    for (let at = from; at < from + length; ) {
+      const number = Math.floor(at / rowBytes);
+      const offset = at - number * rowBytes;
+      const size = Math.min(from + length - at, rowBytes - offset);
+      cut.push({ slice, sha256, number, offset, size });
+      at += size;
+    }
+    return cut;
+  });
+  const found: Buffer[][] = slices.map(() => []);
+  for (let at = 0; at < pieces.length; at += batch) {
+    const asked = pieces.slice(at, at + batch);
+    const column = <K extends keyof (typeof asked)[number]>(key: K) => sql.param(asked.map((piece) => piece[key]));
+    const { rows } = await db.execute<{ slice: number; data: Buffer }>(sql`
+      select t.slice, substring(r.data from t.start + 1 for t.size) as data
+        from unnest(${column('slice')}::int[], ${column('sha256')}::text[], ${column('number')}::int[],
+                    ${column('offset')}::int[], ${column('size')}::int[]) with ordinality
+             as t(slice, sha256, number, start, size, n)
+        join result_array_rows r on r.sha256 = t.sha256 and r.number = t.number order by t.n`);
+    for (const { slice, data } of rows) found[slice]?.push(data);
   }
-  return Buffer.concat(pieces);
+  return found.map((parts) => (parts.length === 1 ? (parts[0] as Buffer) : Buffer.concat(parts)));
 }

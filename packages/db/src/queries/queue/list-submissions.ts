@@ -71,3 +71,13 @@ export async function listTurnTags(db: Queryable) {
     select t.account_id as "accountId", greatest(t.virtual_time, c.virtual_time) as tag from turns t, turn_clock c`);
   return new Map(rows.map(({ accountId, tag }) => [accountId, tag]));
 }
+
+/** Whose submission it is, and of which sweep. */
+export async function findSubmissionOwner(db: Queryable, id: string) {
+  const [row] = await db
+    .select({ accountId: submissions.accountId, sweepId: sweeps.id })
+    .from(submissions)
+    .leftJoin(sweeps, eq(sweeps.submissionId, submissions.id))
+    .where(eq(submissions.id, id));
+  return row;
+}

@@ -92,11 +92,3 @@ export async function listPointArrays(db: Queryable, submissionId: string, array
      order by sp.place`);
   return rows;
 }
-
-/** First rows of many small arrays at once (each fits one stored row). */
-export async function readSmallArrays(db: Queryable, sha256s: readonly string[]): Promise<Map<string, Buffer>> {
-  if (sha256s.length === 0) return new Map();
-  const { rows } = await db.execute<{ sha256: string; data: Buffer }>(sql`
-    select sha256, data from result_array_rows where number = 0 and sha256 = any(${sql.param([...sha256s])}::text[])`);
-  return new Map(rows.map(({ sha256, data }) => [sha256, data]));
-}
