@@ -1,69 +1,89 @@
 import type { ResultArrayData } from '@nightcone/kernel';
-import { arrayValues, indexOf } from '../array-values.ts';
+import { type ArrayValues, arrayValues } from '../array-values.ts';
 import { numberText } from './number-text.ts';
 import type { ResultRecord } from './result-record.ts';
 
-const rowsPerChunk = 2048;
+const rowsPerChunk = 1024;
 
 /**
- * The result as comma-separated text in pieces: lines that begin with `#` say what follows; then one block per array
- * with a header line, the index along every dimension, the coordinate where the result holds one (`fieldT` for the
- * dimension `field`), and the value. Blocks are parted by an empty line; numbers have 17 significant digits.
+ * The result as comma-separated text in pieces. Lines that begin with `#` name job, result and kernel. Then one block
+ * for all arrays along the same dimensions: a header line, one column per dimension (the coordinate where the result
+ * holds one, `fieldT` for the dimension `field`, else the index from 0), one per array. Ragged lists have the row they
+ * belong to in front. Blocks are parted by an empty line; numbers have 17 significant digits.
  */
 export function* csvChunks(record: ResultRecord): Generator<string> {
   const { specification, jobHash, resultDigest, result } = record;
   yield `# model ${specification.model}\n# job ${jobHash}\n# result ${resultDigest}\n# kernel ${specification.kernel}\n`;
-  for (const array of result.arrays) yield* arrayRows(array, result.arrays);
+  const blocks = new Map<string, ResultArrayData[]>();
+  for (const array of result.arrays) {
+    const key = JSON.stringify([array.dims, array.shape, array.ragged]);
+    blocks.set(key, [...(blocks.get(key) ?? []), array]);
+  }
+  for (const arrays of blocks.values()) yield* blockChunks(arrays, result.arrays);
 }
 
-function* arrayRows(array: ResultArrayData, all: readonly ResultArrayData[]): Generator<string> {
-  const { name, unit, dims, shape, ragged } = array;
-  const offsets = ragged === undefined ? undefined : all.find((other) => other.name === ragged);
-  const starts = offsets && arrayValues(offsets);
-  const coordinates = dims.map((dim) => coordinateOf(dim, array, all));
-  const columns = dims.flatMap((dim, i) => [dim, ...(coordinates[i] ? [heading(coordinates[i])] : [])]);
-  yield `\n# ${name}${unit === '' ? '' : ` in ${unit}`}${ragged === undefined ? '' : `, rows of ${ragged}`}\n`;
-  yield `${[...(starts ? ['row'] : []), ...columns, heading(array)].map(quote).join(',')}\n`;
-  const values = arrayValues(array);
-  const coordinateValues = coordinates.map((coordinate) => coordinate && arrayValues(coordinate));
-  let row = 0;
+function* blockChunks(arrays: ResultArrayData[], all: readonly ResultArrayData[]): Generator<string> {
+  const [{ dims, shape, ragged } = { dims: [], shape: [], ragged: undefined }] = arrays;
+  const offsets = all.find(({ name }) => name === ragged);
+  const coordinates = dims.map((dim) => coordinateOf(dim, all));
+  const columns = arrays.filter((array) => !coordinates.includes(array));
+  const names = dims.map((dim, i) => (coordinates[i] ? heading(coordinates[i]) : dim));
+  yield `\n${[...(offsets ? [`row of ${ragged}`] : []), ...names, ...columns.map(heading)].map(quote).join(',')}\n`;
+
+  const rowOf = offsets && rowFinder(arrayValues(offsets));
+  const places = dims.map((_, i) => placeTexts(shape[i] ?? 0, coordinates[i]));
+  const values = columns.map(arrayValues);
+  const index = dims.map(() => 0);
+  const total = shape.reduce((a, b) => a * b, 1);
   let lines: string[] = [];
-  for (const [flat, value] of values.entries()) {
-    const cells: string[] = [];
-    if (starts) {
-      while ((starts[row + 1] ?? values.length + 1) <= (indexOf(flat, shape)[0] ?? 0)) row += 1;
-      cells.push(String(row));
-    }
-    for (const [i, place] of indexOf(flat, shape).entries()) {
-      cells.push(String(place));
-      const coordinate = coordinateValues[i];
-      if (coordinate) cells.push(numberText(coordinate[place] ?? 0));
-    }
-    lines.push(`${[...cells, numberText(value)].join(',')}\n`);
+  for (let flat = 0; flat < total; flat++) {
+    const cells = index.map((place, i) => places[i]?.[place] ?? '');
+    if (rowOf) cells.unshift(String(rowOf(index[0] ?? 0)));
+    for (const column of values) cells.push(numberText(column[flat] ?? 0));
+    lines.push(cells.join(','));
+    advance(index, shape);
     if (lines.length === rowsPerChunk) {
-      yield lines.join('');
+      yield `${lines.join('\n')}\n`;
       lines = [];
     }
   }
-  yield lines.join('');
+  if (lines.length > 0) yield `${lines.join('\n')}\n`;
+}
+
+/** The next index in row-major order. */
+function advance(index: number[], shape: readonly number[]): void {
+  for (let i = index.length - 1; i >= 0; i--) {
+    const next = (index[i] ?? 0) + 1;
+    index[i] = next < (shape[i] ?? 0) ? next : 0;
+    if (index[i] !== 0) return;
+  }
+}
+
+/** The row of a ragged list that holds an entry; to be asked in ascending order. */
+function rowFinder(offsets: ArrayValues): (entry: number) => number {
+  let row = 0;
+  return (entry) => {
+    while (row + 2 < offsets.length && (offsets[row + 1] ?? 0) <= entry) row += 1;
+    return row;
+  };
+}
+
+function placeTexts(count: number, coordinate: ResultArrayData | undefined): string[] {
+  const values = coordinate && arrayValues(coordinate);
+  return Array.from({ length: count }, (_, i) => (values ? numberText(values[i] ?? 0) : String(i)));
 }
 
 const heading = ({ name, unit }: { name: string; unit: string }) => (unit === '' ? name : `${name} (${unit})`);
 const quote = (text: string) => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text);
 
-/** The f64 array along `dim` alone whose name is the dimension with a unit behind it. */
-function coordinateOf(
-  dim: string,
-  array: ResultArrayData,
-  all: readonly ResultArrayData[],
-): ResultArrayData | undefined {
+/** The array along `dim` alone whose name is the dimension with a unit or another word behind it. */
+function coordinateOf(dim: string, all: readonly ResultArrayData[]): ResultArrayData | undefined {
   return all.find(
-    (other) =>
-      other !== array &&
-      other.dtype === 'f64' &&
-      other.dims.length === 1 &&
-      other.dims[0] === dim &&
-      other.name.startsWith(dim) &&
-      /^[A-Z]/.test(other.name.slice(dim.length)),
+    ({ name, dims, ragged }) =>
+      ragged === undefined &&
+      dims.length === 1 &&
+      dims[0] === dim &&
+      name.startsWith(dim) &&
+      /^[A-Z]/.test(name.slice(dim.length)),
   );
 }

@@ -167,21 +167,20 @@ describe('NumPy', () => {
   });
 });
 
-test('CSV: a block per array with coordinates and rows of ragged lists', () => {
-  const blocks = [...csvChunks(record)].join('').split('\n\n');
-  expect(blocks[0]).toMatch(/^# model landau-levels\n# job b{64}\n/);
-  expect(blocks[2]).toBe(
+test('CSV: a block for all arrays along the same dimensions, with coordinates and rows of ragged lists', () => {
+  const [head, ...blocks] = [...csvChunks(record)].join('').split('\n\n');
+  expect(head).toMatch(/^# model landau-levels\n# job b{64}\n/);
+  expect(blocks.map((block) => block.trim().split('\n'))).toEqual([
+    ['fieldT (T)', '0.10000000000000001', '2'],
     [
-      '# energies in eV',
-      'field,fieldT (T),level,energies (eV)',
-      '0,0.10000000000000001,0,-0',
-      '0,0.10000000000000001,1,0.33333333333333331',
-      '1,2,0,1e-300',
-      '1,2,1,-1.5e+22',
-    ].join('\n'),
-  );
-  expect(blocks[4]).toBe(
-    ['# roots in 1/nm, rows of rootOffsets', 'row,root,roots (1/nm)', '1,0,1', '1,1,2', '2,2,3'].join('\n'),
-  );
-  expect(blocks[6]).toBe('# gapEv in eV\ngapEv (eV)\n0.25\n');
+      'fieldT (T),level,energies (eV),energiesValid',
+      '0.10000000000000001,0,-0,0',
+      '0.10000000000000001,1,0.33333333333333331,1',
+      '2,0,1e-300,1',
+      '2,1,-1.5e+22,1',
+    ],
+    ['row of rootOffsets,root,roots (1/nm)', '1,0,1', '1,1,2', '2,2,3'],
+    ['row,rootOffsets', '0,0', '1,0', '2,2', '3,3'],
+    ['gapEv (eV)', '0.25'],
+  ]);
 });
