@@ -40,7 +40,8 @@ BEGIN
   SELECT * INTO k FROM chunks WHERE id = chunk AND state = 'open' FOR NO KEY UPDATE;
   IF NOT FOUND THEN RETURN; END IF;
   SELECT * INTO STRICT s FROM submissions WHERE id = k.submission_id FOR NO KEY UPDATE;
-  UPDATE submissions SET lost_us = lost_us + greatest(0, lost - k.used_us) WHERE id = s.id;
+  UPDATE submissions SET lost_us = lost_us + greatest(0, lost - coalesce((SELECT sum(p.cpu_us) FROM parts p
+      WHERE p.submission_id = s.id AND k.parts @> p.index AND p.attempt = k.attempt), 0)) WHERE id = s.id;
   suspect := lower(k.parts - queue.recorded(k)) / queue.width(s.parts_per_job);
   IF suspect IS NOT NULL THEN
     INSERT INTO execution_events (execution_id, text)

@@ -4,7 +4,7 @@ import type { Db } from '../src/client.ts';
 import { storeKernel } from '../src/queries/kernels/store-kernel.ts';
 import type { NewPoint, PlannedJob, Submitter } from '../src/queries/queue/save-submission.ts';
 import { type SubmittedSweep, submitSweep } from '../src/queries/queue/submit-sweep.ts';
-import { Queue } from '../src/queue.ts';
+import { leaseMs, Queue } from '../src/queue.ts';
 import type { Chunk, FinishedResult, Order, PartRecord, Task } from '../src/queue-types.ts';
 import { accounts } from '../src/schema/accounts.ts';
 
@@ -155,4 +155,15 @@ export async function takeChunk(queue: Queue, offer = anySlot): Promise<Chunk> {
   const chunk = await queue.next(offer);
   if (!chunk) throw new Error('the queue has nothing for this slot');
   return chunk;
+}
+
+/** The reaper, as if the database had been in reach for one lease time: how many leases it took. */
+export async function reapNow(queue: Queue): Promise<number> {
+  const clock = Date.now;
+  Date.now = () => clock() + leaseMs + 1;
+  try {
+    return await queue.reap();
+  } finally {
+    Date.now = clock;
+  }
 }

@@ -2,6 +2,8 @@ import { randomBytes } from 'node:crypto';
 import pg from 'pg';
 import { inject } from 'vitest';
 import { createDb, createPool, type Db } from '../src/client.ts';
+// What the set-up of a test run provides.
+import type {} from './server.ts';
 
 export * from './fixtures.ts';
 

@@ -8,6 +8,7 @@ import {
   drain,
   endRetryPauses,
   ledgerErrors,
+  reapNow,
   recordOf,
   resultOf,
   startQueue,
@@ -45,22 +46,11 @@ const counts = async () => {
   );
   return all.map(({ rows }) => rows[0]?.n);
 };
-/** What the reaper does when it may: it judges only after one lease time with the database in reach. */
-const crashSilent = async (queue: Queue) => {
-  const clock = Date.now;
-  Date.now = () => clock() + leaseMs + 1;
-  try {
-    return await queue.reap();
-  } finally {
-    Date.now = clock;
-  }
-};
-
 test('a worker that has lost its lease writes nothing, and is told so', async () => {
   await submitTestSweep(database.db, theorist, { kernel, numbers: [1, 2, 3, 4, 5, 6, 7, 8] });
   const stale = await takeChunk(first);
   await ageLeases(database.db);
-  expect(await crashSilent(second)).toBe(1);
+  expect(await reapNow(second)).toBe(1);
   await endRetryPauses(database.db);
   const retried = await takeChunk(second);
   expect(retried).toMatchObject({ id: stale.id, attempt: 2 });
@@ -86,7 +76,7 @@ test('payloads of a stale worker are not stored either', async () => {
   await submitTestSweep(database.db, theorist, { kernel, numbers: [1], job: { estimatedMs: 8000, slices: 8 } });
   const stale = await takeChunk(first);
   await ageLeases(database.db);
-  await crashSilent(second);
+  await reapNow(second);
   expect(
     await first.record(
       stale,
@@ -146,7 +136,7 @@ test('a silent worker is marked, and active again when it speaks', async () => {
   await database.db.execute(
     sql`update workers set heartbeat_at = now() - interval '1 hour' where id = ${first.worker.id}`,
   );
-  await crashSilent(second);
+  await reapNow(second);
   expect(await stateOf(first)).toBe('silent');
   await first.beat([]);
   expect(await stateOf(first)).toBe('active');
