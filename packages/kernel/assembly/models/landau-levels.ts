@@ -13,7 +13,8 @@ import { addCertificateNumber, beginResult, finishResult } from "../result";
 import { MEMORY_EXCEEDED, NOT_CONVERGED, OK, PAYLOAD_MISMATCH } from "../status";
 import { ARRAY_COUNT, writeArrays } from "./landau-levels/arrays";
 import { addChecks } from "./landau-levels/checks";
-import { rowCost } from "./landau-levels/cost";
+import { assemblyCost, rowCost } from "./landau-levels/cost";
+import { prepareLineShape } from "./landau-levels/line-shape";
 import { hasLevels } from "./landau-levels/monolayer";
 import { field, isBilayer, levelCount, readParameters, valleyCount } from "./landau-levels/parameters";
 import { errorsAt, fillRow, layOutRow, rowLength, validAt, wholeOffset } from "./landau-levels/row";
@@ -24,6 +25,7 @@ export function open(): i32 {
   const status = readParameters();
   if (status != OK) return status;
   layOutRow();
+  prepareLineShape();
   // rows and arrays each hold the result once
   if (!fits(3 * ((<u64>rowLength * <u64>field.count) << 3))) {
     return fail(MEMORY_EXCEEDED, "The result does not fit into 4 GiB: ask for fewer fields, energies or carrier densities.");
@@ -55,7 +57,7 @@ export function computeSlice(slice: i32): i32 {
 }
 
 export function assembleCost(): f64 {
-  return 20 * <f64>rowLength * <f64>field.count + 6 * rowCost();
+  return assemblyCost(field.count);
 }
 
 export function assemble(): i32 {

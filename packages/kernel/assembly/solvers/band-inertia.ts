@@ -12,7 +12,7 @@
  */
 import { mark, release, reserve } from "../arena";
 import { BandMatrix, entryAt } from "./band-matrix";
-import { at, put } from "./chain";
+import { at, put } from "../doubles";
 import { intAt } from "./chain-brackets";
 
 /** Replaces a vanishing pivot; the growth it causes discredits the count. */

@@ -18,7 +18,7 @@ import { EPSILON } from "../constants";
 import { BandMatrix } from "./band-matrix";
 import { countBelow, countedAt } from "./band-inertia";
 import { intAt, putInt } from "./chain-brackets";
-import { at, put } from "./chain";
+import { at, put } from "../doubles";
 import { lanczosLevels } from "./shift-invert-lanczos";
 
 export const BAND_TOO_MANY: i32 = -1;

@@ -1,5 +1,6 @@
 /** Residuals of a chain's levels: ‖H z − λ z‖ for a unit z, real for open chains and complex for rings. */
-import { at, Chain } from "./chain";
+import { Chain } from "./chain";
+import { at } from "../doubles";
 
 export function chainResidual(chain: Chain, level: f64, z: usize): f64 {
   return chain.closed ? ringResidual(chain, level, z) : openResidual(chain, level, z);

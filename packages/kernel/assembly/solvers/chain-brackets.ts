@@ -10,7 +10,8 @@
  * Fails     false when a ring's elimination grows from every start.
  */
 import { mark, release, reserve, reserveF64 } from "../arena";
-import { at, Chain, chainCounts, put } from "./chain";
+import { Chain, chainCounts } from "./chain";
+import { at, put } from "../doubles";
 
 @unmanaged
 export class Brackets {

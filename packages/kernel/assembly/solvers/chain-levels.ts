@@ -12,7 +12,8 @@
  */
 import { mark, release, reserve, reserveF64 } from "../arena";
 import { bisect, bracketGuesses, Brackets, intAt, isIsolated, learn, newBrackets, putInt } from "./chain-brackets";
-import { at, Chain, chainCounts, FOLDS, put } from "./chain";
+import { Chain, chainCounts, FOLDS } from "./chain";
+import { at, put } from "../doubles";
 import { LONE, ringStep, ringStepBytes } from "./ring-step";
 import { twistedBytes, twistedStep } from "./twisted-step";
 

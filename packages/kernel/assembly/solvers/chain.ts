@@ -6,6 +6,7 @@
  */
 import { reserve, reserveF64 } from "../arena";
 import { EPSILON } from "../constants";
+import { at, put } from "../doubles";
 import { FOLD_BYTES, ringCounts } from "./ring-count";
 import { pivotedGrowth, ringCountPivoted } from "./ring-count-pivoted";
 import { sturmCounts } from "./sturm-count";
@@ -130,15 +131,6 @@ export function foldCorner(chain: Chain, k: i32): f64 {
 }
 export function foldMiddle(chain: Chain, k: i32): f64 {
   return at(chain.bonds, wrap(foldStart(chain, k) + chain.n / 2, chain.n));
-}
-
-@inline
-export function at(p: usize, i: i32): f64 {
-  return load<f64>(p + (<usize>i << 3));
-}
-@inline
-export function put(p: usize, i: i32, value: f64): void {
-  store<f64>(p + (<usize>i << 3), value);
 }
 
 const growth: usize = memory.data(64, 16);

@@ -6,7 +6,7 @@
  * Output    d ascending, column k of z (entries z[i·n + k]) its unit vector; e is destroyed.
  * Accuracy  a few ε‖T‖.   Cost  about 3 n³.   Fails  false when one eigenvalue needs more than 60 sweeps.
  */
-import { at, put } from "./chain";
+import { at, put } from "../doubles";
 import { EPSILON } from "../constants";
 
 export function implicitQl(n: i32, d: usize, e: usize, z: usize): bool {

@@ -15,7 +15,8 @@
  * Accuracy  the exact count of a matrix within a few ε·max(‖H‖, growth).   Cost  about one division per site.
  * Fails     never; the caller judges the growth.
  */
-import { at, Chain, wrap } from "./chain";
+import { Chain, wrap } from "./chain";
+import { at } from "../doubles";
 import { DETERMINANT_FLOOR } from "./ring-count";
 
 const ALPHA: f64 = 0.6403882032022076; // (1 + √17)/8

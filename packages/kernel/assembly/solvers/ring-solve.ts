@@ -7,7 +7,8 @@
 import { mark, release, reserve } from "../arena";
 import { BandMatrix, newBand, sealBand, setEntry } from "./band-matrix";
 import { bandSolveBytes, factorBand, solveBand } from "./band-solve";
-import { at, Chain } from "./chain";
+import { Chain } from "./chain";
+import { at } from "../doubles";
 
 export function ringSolveBytes(n: i32): u64 {
   return bandSolveBytes(n, 2) + <u64>n * 16 + <u64>n * 48 + 512;

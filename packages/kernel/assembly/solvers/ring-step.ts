@@ -17,7 +17,8 @@
  * Accuracy  as twisted-step.ts while the elimination does not grow; the caller measures the true residual.
  * Cost      about 9 n divisions or roots, four f64x2 chains.   Fails  never.
  */
-import { at, Chain, foldCorner, foldMiddle, foldOf, foldStart, put } from "./chain";
+import { Chain, foldCorner, foldMiddle, foldOf, foldStart } from "./chain";
+import { at, put } from "../doubles";
 import { DETERMINANT_FLOOR, FLUSH, FOLD_BYTES } from "./ring-count";
 import { flushed } from "./twisted-step";
 

@@ -19,7 +19,7 @@ import { EPSILON } from "../constants";
 import { addScaled, dot, fillFixed, normalise, projectOut } from "../linalg/dense-vector";
 import { applyBand, BandMatrix } from "./band-matrix";
 import { bandSolveBytes, factorBand, solveBand } from "./band-solve";
-import { at, put } from "./chain";
+import { at, put } from "../doubles";
 import { implicitQl } from "./implicit-ql";
 
 /** Basis vectors of one round. */

@@ -9,7 +9,8 @@
  * Fails     never: an exactly zero pivot becomes ε‖T‖, which is what inverse iteration wants.
  */
 import { EPSILON } from "../constants";
-import { at, Chain, put } from "./chain";
+import { Chain } from "./chain";
+import { at, put } from "../doubles";
 
 export function tridiagonalSolveBytes(n: i32): u64 {
   return <u64>n * 40;

@@ -16,7 +16,8 @@
  * Cost      16 n divisions and 40 n multiplications in four f64x2 chains.   Fails  never; a step may be useless far
  *           from a level, which the caller sees from the bracket.
  */
-import { at, Chain, put } from "./chain";
+import { Chain } from "./chain";
+import { at, put } from "../doubles";
 import { storeCounts } from "./sturm-count";
 
 export function twistedBytes(n: i32): u64 {

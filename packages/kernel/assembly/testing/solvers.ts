@@ -1,5 +1,6 @@
 /** Exports for the solver tests only: chains from plain arrays. Never part of a released kernel. */
-import { Chain, chainCounts, newChain, put, sealChain } from "../solvers/chain";
+import { Chain, chainCounts, newChain, sealChain } from "../solvers/chain";
+import { put } from "../doubles";
 import { levelsByIndex } from "../solvers/chain-levels";
 import { releaseAll, reserve } from "../arena";
 

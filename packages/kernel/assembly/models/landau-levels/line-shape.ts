@@ -5,7 +5,7 @@
  *   occupied   P(x) = ∫ L(ε) f(ε − x) dε, x = Fermi energy − level, f = 1/(1 + e^{ε/kT}):
  *     none        step (½ at 0), or 1/(1 + e^{−x/kT})
  *     Lorentzian  ½ + arctan(x/Γ)/π, or ½ + Im ψ(½ + (Γ + ix)/2πkT)/π
- *     Gaussian    ½ erfc(−x/σ√2), or the trapezoidal rule on the narrower factor
+ *     Gaussian    ½ erfc(−x/σ√2), or the trapezoidal rule on the narrower factor; tabulated once per record
  *
  * Source    the digamma form: sum over the Matsubara poles of f, with M. Abramowitz, I. A. Stegun, Handbook, 6.3.16;
  *           the trapezoidal rule converges exponentially on analytic integrands: L. N. Trefethen, J. A. C. Weideman,
@@ -13,6 +13,7 @@
  * Accuracy  absolute 1e-14.   Fails  never.
  */
 import { digammaImaginary } from "../../functions/digamma";
+import { newStepPanels, StepPanels, stepValue } from "../../functions/chebyshev-panels";
 import { erfc } from "../../functions/error-function";
 import { broadening, GAUSSIAN, lineWidth, LORENTZIAN, thermalEnergy } from "./parameters";
 
@@ -34,11 +35,25 @@ export function occupiedPart(x: f64): f64 {
     const scale = 1 / (2 * Math.PI * thermalEnergy);
     return 0.5 + digammaImaginary(0.5 + lineWidth * scale, x * scale) / Math.PI;
   }
-  if (broadening == GAUSSIAN) {
-    return thermalEnergy == 0 ? 0.5 * erfc((-x / lineWidth) * ROOT_HALF) : gaussianAtTemperature(x);
-  }
+  if (broadening == GAUSSIAN) return stepValue(gaussianPanels, x);
   if (thermalEnergy == 0) return x > 0 ? 1 : x < 0 ? 0 : 0.5;
   return fermi(x / thermalEnergy);
+}
+
+let gaussianPanels: StepPanels = changetype<StepPanels>(0);
+
+/** Tabulates what is too dear to compute for every pair of level and energy. Called once per record. */
+export function prepareLineShape(): void {
+  if (broadening != GAUSSIAN) return;
+  const scale = Math.max(lineWidth, thermalEnergy);
+  const reach = 9 * lineWidth + 40 * thermalEnergy;
+  gaussianPanels = newStepPanels(
+    thermalEnergy == 0 ? gaussianStep : gaussianAtTemperature, scale, <i32>Math.ceil(reach / scale),
+  );
+}
+
+function gaussianStep(x: f64): f64 {
+  return 0.5 * erfc((-x / lineWidth) * ROOT_HALF);
 }
 
 /** 1/(1 + e^{−u}). */
@@ -48,9 +63,6 @@ function fermi(u: f64): f64 {
 }
 
 function gaussianAtTemperature(x: f64): f64 {
-  const reach = 9 * lineWidth + 40 * thermalEnergy;
-  if (x > reach) return 1;
-  if (x < -reach) return 0;
   let sum = 0.0;
   if (thermalEnergy <= lineWidth) {
     // ∫ Φ((x + kT u)/σ) e^{−|u|}/(1 + e^{−|u|})² du; poles at iπ: step ½ leaves e^{−39}

@@ -6,12 +6,13 @@
  * Neutral is half of all listed levels over all valleys and spins: with both valleys the middle of the gap; with one
  * valley the half-filled n = 0 level (its parity anomaly). Levels of equal energy are merged with their weights.
  *
- * Source    V. P. Gusynin, S. G. Sharapov, PRL 95, 146801 (2005); line shapes: line-shape.ts; bracketed secant steps:
- *           M. Dowell, P. Jarratt, BIT 11 (1971) 168–174.
+ * Source    V. P. Gusynin, S. G. Sharapov, PRL 95, 146801 (2005); line shapes: line-shape.ts; roots:
+ *           bracketed-root.ts.
  * Accuracy  n(E) to 1e-14 of the listed total; the Fermi energy to a few ε, or n to 1e-13 of the total where flat.
  */
 import { at, put } from "../../doubles";
-import { EPSILON, FLUX_QUANTUM } from "../../constants";
+import { FLUX_QUANTUM } from "../../constants";
+import { bracketedRoot } from "../../functions/bracketed-root";
 import { heapSort } from "../../linalg/heap-sort";
 import { lineDensity, occupiedPart } from "./line-shape";
 import { broadening, NO_BROADENING, spinFactor, thermalEnergy } from "./parameters";
@@ -94,7 +95,8 @@ export function fermiEnergy(carrier: f64): f64 {
   // in a gap between narrow lines the charge is flat: its middle is the answer, not an end
   if (isMiddle(low) && Math.abs(at(charges, low) - carrier) <= flat) return at(nodes, low);
   if (isMiddle(high) && Math.abs(at(charges, high) - carrier) <= flat) return at(nodes, high);
-  return solve(carrier, at(nodes, low), at(nodes, high), at(charges, low) - carrier, at(charges, high) - carrier, flat);
+  wanted = carrier;
+  return bracketedRoot(excess, at(nodes, low), at(nodes, high), at(charges, low) - carrier, at(charges, high) - carrier, flat);
 }
 
 @inline
@@ -102,30 +104,11 @@ function isMiddle(node: i32): bool {
   return (node & 1) == 1;
 }
 
-/** Bracketed secant: the end that stays is halved in weight; every fourth step bisects. */
-function solve(carrier: f64, low: f64, high: f64, atLow: f64, atHigh: f64, flat: f64): f64 {
-  if (atLow >= 0) return low;
-  if (atHigh <= 0) return high;
-  let side = 0;
-  for (let step = 1; step < 200; step++) {
-    if (high - low <= 4 * EPSILON * Math.max(Math.abs(low), Math.abs(high))) break;
-    let x = step % 4 == 0 ? 0.5 * (low + high) : low - (atLow * (high - low)) / (atHigh - atLow);
-    if (!(x > low && x < high)) x = 0.5 * (low + high);
-    const value = chargeAt(x) - carrier;
-    if (Math.abs(value) <= flat) return x;
-    if (value < 0) {
-      low = x;
-      atLow = value;
-      if (side == -1) atHigh *= 0.5;
-      side = -1;
-    } else {
-      high = x;
-      atHigh = value;
-      if (side == 1) atLow *= 0.5;
-      side = 1;
-    }
-  }
-  return 0.5 * (low + high);
+/** Carrier density that `excess` is counted from. */
+let wanted: f64 = 0;
+
+function excess(energy: f64): f64 {
+  return chargeAt(energy) - wanted;
 }
 
 /** Sharp levels at zero temperature: the level that is being filled, or the middle of a gap when one is full. */

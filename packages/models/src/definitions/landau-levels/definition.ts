@@ -1,4 +1,7 @@
 import type { ModelDefinition } from '../../definition.ts';
+import { examples, preview } from './examples.ts';
+import { methods } from './methods.ts';
+import { notes, noteTexts } from './notes.ts';
 import { numerics } from './numerics.ts';
 import { parameters } from './parameters.ts';
 import { certificate, checks, results } from './results.ts';
@@ -22,9 +25,9 @@ export const landauLevels: ModelDefinition = {
   sliceBytes,
   assembleBytes,
   resultBytes,
-  notes: () => [],
-  noteTexts: {},
-  preview: [],
-  examples: [],
-  methods: { equations: '', numerics: '', validity: '', sources: [], pitfalls: [] },
+  notes,
+  noteTexts,
+  preview,
+  examples,
+  methods,
 };

@@ -47,9 +47,47 @@ export const resultBytes: Expression = times(
 export const sliceBytes: Expression = sum(1_048_576, times(8 * FIELDS_PER_SLICE, row), times(8192, levels));
 export const assembleBytes: Expression = sum(1_048_576, payloads, resultBytes, times(8192, levels));
 
-const usesLadder = is('/numerics/method', 'ladder');
 const usesGrid = is('/numerics/method', 'grid');
+const usesLadder = is('/numerics/method', 'ladder');
+const hasSkewHopping = isNotZero('/parameters/system/v3Ratio');
+const choosesLadder = times(is('/numerics/method', 'auto'), hasSkewHopping);
+const usesClosedForm = minus(1, sum(usesGrid, usesLadder, choosesLadder));
+const isMonolayer = minus(1, isBilayer);
 
-export const cost: Expression = 1;
-export const assembleCost: Expression = 1;
-export { carriers, energies, fields, hasLines, isNotZero, most, usesGrid, usesLadder };
+/** Nanoseconds for the levels of one valley, by method. */
+const ladderSize = sum(read('/numerics/method/size'), times(1.5, choosesLadder, most(32, times(2, maxIndex))));
+const bilayerLadder = sum(
+  times(12, ladderSize, sum(400, times(20, levels))),
+  times(150, isNotZero('/parameters/system/v4Ratio'), ladderSize, ladderSize),
+);
+const valleyCost = sum(
+  times(
+    usesClosedForm,
+    sum(times(isBilayer, 1200, sum(maxIndex, 2)), times(isMonolayer, sum(times(30, maxIndex), 100))),
+  ),
+  times(
+    7,
+    read('/numerics/method/boxMagneticLengths'),
+    read('/numerics/method/cellsPerMagneticLength'),
+    sum(300, times(50, levels)),
+  ),
+  times(usesLadder, isMonolayer, 80, levels, sum(times(2, ladderSize), 1)),
+  times(isBilayer, sum(usesLadder, choosesLadder), bilayerLadder),
+);
+
+/** Nanoseconds for the occupied part of one level at one energy. */
+const isWarm = isNotZero('/parameters/temperatureK');
+const occupiedCost = sum(
+  times(is('/parameters/broadening', 'lorentzian'), sum(10, times(25, isWarm))),
+  times(is('/parameters/broadening', 'gaussian'), 10),
+  times(is('/parameters/broadening', 'none'), sum(1, times(7, isWarm))),
+);
+const valleysDiffer = times(isBilayer, isNotZero('/parameters/system/biasEv'));
+const distinct = times(spinCount, levels, sum(1, times(valleysDiffer, minus(valleyCount, 1))));
+const held = times(
+  distinct,
+  sum(times(energies, sum(occupiedCost, 2, times(5, hasLines))), times(7, carriers, occupiedCost)),
+);
+
+export const cost: Expression = times(fields, sum(times(valleyCount, valleyCost), held, times(2, row), 1500));
+export const assembleCost: Expression = sum(times(12, row, fields), 400_000);
