@@ -1,20 +1,22 @@
-/** Lets slots sleep until there may be work. A wake while nobody sleeps is remembered for the next sleeper. */
+/** Lets slots sleep until there may be work. Nobody misses a wake that came after he last looked for work. */
 export class WakeSignal {
-  #sleepers = new Set<() => void>();
-  #pending = false;
+  readonly #sleepers = new Set<() => void>();
+  #wakes = 0;
+
+  /** To be read before looking for work, and given to `sleep` when there was none. */
+  get wakes(): number {
+    return this.#wakes;
+  }
 
   wake(): void {
-    if (this.#sleepers.size === 0) this.#pending = true;
+    this.#wakes++;
     for (const wakeUp of this.#sleepers) wakeUp();
     this.#sleepers.clear();
   }
 
-  /** Resolves at the next wake, or after about `timeoutMs` (spread by a quarter, so that workers do not poll in step). */
-  sleep(timeoutMs: number): Promise<void> {
-    if (this.#pending) {
-      this.#pending = false;
-      return Promise.resolve();
-    }
+  /** Resolves at the next wake after `seen`, or after about `timeoutMs` (spread, so that workers do not poll in step). */
+  sleep(seen: number, timeoutMs: number): Promise<void> {
+    if (this.#wakes !== seen) return Promise.resolve();
     return new Promise((resolve) => {
       const wakeUp = () => {
         clearTimeout(timer);

@@ -41,6 +41,15 @@ export class ChunkRun {
     return this.#earlierCpuMs + (this.#computing ? this.options.thread.cpuMs : 0);
   }
 
+  get finishedTasks(): number {
+    return this.#finishedTasks;
+  }
+
+  /** Somebody else has this chunk now: nothing of this attempt is written any more. */
+  get isLost(): boolean {
+    return this.#order === 'lost';
+  }
+
   heartbeat(): Heartbeat {
     const fraction = (this.#finishedTasks + this.#taskFraction) / this.chunk.tasks.length;
     return { chunk: this.chunk, cpuUs: Math.round(this.cpuMs * 1000), fraction: Math.min(1, fraction) };
@@ -90,7 +99,7 @@ export class ChunkRun {
   /** Records the rest and ends the attempt; the reason of a crash, if it was one. */
   async settle(): Promise<string | undefined> {
     await this.#recorder.drain();
-    if (this.#order === 'lost') return undefined;
+    if (this.isLost) return undefined;
     if (this.#failure === undefined) {
       await this.options.queue.finish(this.chunk);
       return undefined;

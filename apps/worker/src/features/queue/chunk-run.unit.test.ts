@@ -77,8 +77,8 @@ describe('one attempt at a chunk', () => {
     await run.compute();
     expect(await run.settle()).toBeUndefined();
     expect(queue.records.map(({ cpuUs, ...record }) => record)).toEqual([
-      { index: 0, outcome: 'result', result: expect.objectContaining({ data: [Uint8Array.of(0, 1, 1, 1)] }) },
-      { index: 1, outcome: 'payloads', payloads: [Uint8Array.of(1, 2), Uint8Array.of(2, 2)] },
+      { index: 0, outcome: 'result', result: expect.objectContaining({ data: [Uint8Array.of(0, 1, 1, 1, 1, 1)] }) },
+      { index: 1, outcome: 'payloads', payloads: [Uint8Array.of(1, 2, 1), Uint8Array.of(2, 2, 1)] },
       { index: 2, outcome: 'result', result: expect.objectContaining({ data: [Uint8Array.of(4, 5)] }) },
       { index: 3, outcome: 'failure', code: 'not-converged', text: 'slice 0 did not converge' },
     ]);

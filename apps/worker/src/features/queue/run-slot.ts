@@ -28,8 +28,10 @@ export async function runSlot({ queue, thread, offer, jobOf, wake, runs, stoppin
     const { id: chunk, attempt, submissionId: submission } = run.chunk;
     try {
       const crash = await run.settle();
-      if (crash !== undefined) log.warn({ chunk, attempt, submission, reason: crash }, 'chunk crashed');
-      else log.debug({ chunk, attempt, submission, cpuMs: Math.round(run.cpuMs) }, 'chunk ended');
+      const end = { chunk, attempt, submission, tasks: run.finishedTasks, cpuMs: Math.round(run.cpuMs) };
+      if (crash !== undefined) log.warn({ ...end, reason: crash }, 'chunk crashed');
+      else if (run.isLost) log.warn(end, 'chunk was lost to another attempt');
+      else log.debug(end, 'chunk ended');
     } catch (error) {
       // The chunk keeps its lease, without heartbeats from now on: it is taken away and tried again like a lost one.
       log.error({ chunk, attempt, submission, reason: errorText(error) }, 'chunk could not be ended');
@@ -59,11 +61,12 @@ export async function runSlot({ queue, thread, offer, jobOf, wake, runs, stoppin
   }
 
   while (!stopping.aborted) {
+    const seen = wake.wakes;
     const chunk = await next();
     if (chunk) await compute(chunk);
     // Its end may free what held the next chunk back, a cap or the assembly of a job.
     else if (settling) await settling;
-    else await wake.sleep(pollMs);
+    else await wake.sleep(seen, pollMs);
   }
   await settling;
 }
