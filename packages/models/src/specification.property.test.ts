@@ -63,3 +63,26 @@ describe.each(models.map((model) => [model.id, model] as const))('whatever %s ac
     );
   });
 });
+
+test('whatever else is sent is refused in words and never throws', () => {
+  const anything = fc.oneof(
+    fc.jsonValue(),
+    fc.dictionary(fc.constantFrom('fieldT', 'kPerNm', 'edge', 'kind'), fc.jsonValue()),
+  );
+  const input = fc.record({
+    model: fc.constantFrom(...models.map(({ id }) => id), 'x', null),
+    parameters: anything,
+    numerics: anything,
+  });
+  fc.assert(
+    fc.property(fc.oneof(input, fc.jsonValue()), (sent) => {
+      const parsed = parseSpecification(manifest, sent);
+      return (
+        !parsed.ok &&
+        parsed.problems.length > 0 &&
+        parsed.problems.every(({ message, limit }) => message !== '' && limit !== '')
+      );
+    }),
+    { numRuns: 300 },
+  );
+});

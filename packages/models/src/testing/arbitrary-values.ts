@@ -48,7 +48,7 @@ export function arbitraryMembers(fields: readonly Field[]): fc.Arbitrary<{ [name
   return fc.record(model, { requiredKeys }) as fc.Arbitrary<{ [name: string]: Json }>;
 }
 
-/** No magnitudes below 10⁻⁹ but 0: nobody means them, and quotients of them leave the doubles. */
+/** No magnitudes below 10⁻⁹ but 0 and -0: nobody means them, and quotients of them leave the doubles. */
 const numberIn = ({ min, max, exclusiveMin = false }: { min: number; max: number; exclusiveMin?: boolean }) =>
   fc
     .double({ min, max, minExcluded: exclusiveMin, noNaN: true, noDefaultInfinity: true })
