@@ -7,12 +7,18 @@ export const routes: RouteObject[] = [
   {
     element: <Layout />,
     errorElement: <RouteError bare />,
+    // The first chunk arrives within the time in which a message would only flash.
+    HydrateFallback: () => null,
     children: [
       {
         errorElement: <RouteError />,
         children: [
           { path: '/', lazy: () => import('../features/queue/tonight-page.tsx') },
           { path: '/sign-in', lazy: () => import('../features/accounts/sign-in-page.tsx') },
+          { path: '/question', lazy: () => import('../features/models/question/picker-page.tsx') },
+          { path: '/question/:model', lazy: () => import('../features/models/question/question-page.tsx') },
+          { path: '/methods', lazy: () => import('../features/models/methods/methods-page.tsx') },
+          { path: '/methods/:model', lazy: () => import('../features/models/methods/method-page.tsx') },
           { path: '/jobs', lazy: () => import('../features/jobs/jobs-page.tsx') },
           { path: '/jobs/:hash', lazy: () => import('../features/jobs/job-page.tsx') },
           { path: '/sweeps', lazy: () => import('../features/sweeps/sweeps-page.tsx') },

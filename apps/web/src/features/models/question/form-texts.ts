@@ -22,6 +22,8 @@ export const togetherName = (name: string) => `${name}#with`;
 
 /** Axes that no single control can hold (whole choices, whole axes), as JSON. */
 export const otherAxesName = '#axes';
+/** The title under which the question is submitted; empty: made from the question. */
+export const titleName = '#title';
 
 /** JSON Pointer into parameters or numerics of a control's name. */
 export const pointerOfName = (name: string): string =>
@@ -106,6 +108,7 @@ export function writeBody(
   for (const part of ['parameters', 'numerics'] as const)
     for (const field of model[part]) writeField(texts, `${part}/${field.name}`, field, body[part]?.[field.name]);
   texts[otherAxesName] = '';
+  texts[titleName] = '';
   return texts;
 }
 

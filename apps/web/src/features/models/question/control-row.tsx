@@ -1,0 +1,85 @@
+import type { Field } from '@nightcone/models';
+import type { ReactNode } from 'react';
+import { FieldError } from '../../../components/field.tsx';
+import { SymbolText } from '../../../plots/symbol-text.tsx';
+import { type QuestionNote, useQuestionForm } from './question-context.ts';
+
+/** One line of the form: symbol, name with the letters of its notes, control; error and folded notes below. */
+export function ControlRow({
+  name,
+  field,
+  htmlFor,
+  labelId,
+  error,
+  errorId,
+  children,
+}: {
+  name: string;
+  field: Field;
+  htmlFor?: string;
+  labelId?: string;
+  error?: string;
+  errorId?: string;
+  children: ReactNode;
+}) {
+  const { notes } = useQuestionForm();
+  const own = notes.get(name) ?? [];
+  const title = field.display?.title ?? field.name;
+  const words = (
+    <>
+      {title}
+      {own.map((note) => (
+        <sup key={note.key} aria-hidden="true" className="ml-0.5 hidden margin:inline">
+          <i className="symbol font-semibold">{note.letter}</i>
+        </sup>
+      ))}
+    </>
+  );
+  return (
+    <div
+      className="grid grid-cols-[1.6rem_minmax(0,1fr)] gap-x-1 py-1 sm:grid-cols-[1.6rem_7.4rem_minmax(0,1fr)]"
+      title={field.display?.help}
+    >
+      <span aria-hidden="true" className="pt-[3px]">
+        {field.display?.symbol ? <SymbolText tex={field.display.symbol} /> : null}
+      </span>
+      {htmlFor ? (
+        <label htmlFor={htmlFor} className="pt-[3px] leading-[1.3]">
+          {words}
+        </label>
+      ) : (
+        <span id={labelId} className="pt-[3px] leading-[1.3]">
+          {words}
+        </span>
+      )}
+      <div className="min-w-0 max-sm:col-span-2">
+        {children}
+        {error ? <FieldError {...(errorId ? { id: errorId } : {})}>{error}</FieldError> : null}
+        <FoldedNotes notes={own} />
+      </div>
+    </div>
+  );
+}
+
+/** On a narrow screen the margin's entry folds under its line. */
+function FoldedNotes({ notes }: { notes: readonly QuestionNote[] }) {
+  if (notes.length === 0) return null;
+  return (
+    <ul className="mt-1 margin:hidden">
+      {notes.map((note) => (
+        <li key={note.key} className="border-ink border-l pl-2.5 text-small">
+          <NoteWords note={note} />
+        </li>
+      ))}
+    </ul>
+  );
+}
+
+const words = { refuse: 'Refused. ', caution: 'Caution. ', note: '' };
+
+export const NoteWords = ({ note }: { note: QuestionNote }) => (
+  <>
+    {words[note.severity] ? <b>{words[note.severity]}</b> : null}
+    {note.text}
+  </>
+);

@@ -1,0 +1,69 @@
+import { findModel } from '@nightcone/models';
+import { useState } from 'react';
+import { useLocation, useNavigate, useParams } from 'react-router-dom';
+import { ButtonLink, TextButton } from '../../../components/button.tsx';
+import { Page } from '../../../components/page.tsx';
+import { Empty, Loading } from '../../../components/problem-note.tsx';
+import { PasteDialog, type PastedQuestion } from './paste-dialog.tsx';
+import { QuestionSheet } from './question-sheet.tsx';
+import { useQuestionSource } from './use-question-source.ts';
+
+/** New question for one model. */
+export function Component() {
+  const { model: id = '' } = useParams();
+  const model = findModel(id);
+  if (!model)
+    return (
+      <Page title="New question">
+        <Empty title="There is no such model" actions={<ButtonLink to="/question">Pick a model</ButtonLink>}>
+          <p>
+            <code>{id}</code> is not a model of the current program.
+          </p>
+        </Empty>
+      </Page>
+    );
+  return <QuestionOf key={model.id} model={model} />;
+}
+
+function QuestionOf({ model }: { model: NonNullable<ReturnType<typeof findModel>> }) {
+  const navigate = useNavigate();
+  const location = useLocation();
+  const [pasted, setPasted] = useState<PastedQuestion | null>(
+    () => (location.state as { pasted?: PastedQuestion } | null)?.pasted ?? null,
+  );
+  const [pasting, setPasting] = useState(false);
+  const source = useQuestionSource(model, pasted);
+  const take = (question: PastedQuestion) => {
+    if (question.model === model.id) setPasted(question);
+    else void navigate(`/question/${question.model}`, { state: { pasted: question } });
+  };
+  // another source is another form; the same source keeps what was typed
+  const formKey = `${location.search} ${pasted ? JSON.stringify(pasted) : ''}`;
+  return (
+    <Page
+      title={`New question: ${model.title}`}
+      heading={model.title}
+      lead={
+        <>
+          <span>
+            {model.summary} <code>{model.id}</code>
+          </span>
+          {source.said ? <span>{source.said}</span> : null}
+          <TextButton onClick={() => setPasting(true)}>Paste a specification</TextButton>
+        </>
+      }
+    >
+      {source.problem ? (
+        <p role="alert" className="mt-3 border-ink border-l-2 pl-3">
+          {source.problem}
+        </p>
+      ) : null}
+      {source.texts ? (
+        <QuestionSheet key={formKey} model={model} first={source.texts} untouched={source.untouched} onPaste={take} />
+      ) : (
+        <Loading what="the question" />
+      )}
+      <PasteDialog open={pasting} onOpenChange={setPasting} onQuestion={take} />
+    </Page>
+  );
+}
