@@ -33,6 +33,10 @@ export function RouteError({ bare = false }: { bare?: boolean }) {
         </div>
       </>
     );
-  const page = <Page title="This page stopped">{body}</Page>;
+  const page = (
+    <Page wide title="This page stopped">
+      {body}
+    </Page>
+  );
   return bare ? <main className="mx-auto max-w-[1440px] px-4 py-10 margin:px-10">{page}</main> : page;
 }

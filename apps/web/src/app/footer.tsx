@@ -5,7 +5,7 @@ export function Footer() {
   const { group, kernel } = useSession();
   return (
     <footer className="mt-8 flex flex-col gap-2 border-hair border-t py-5 text-ink3 text-least">
-      <p className="max-w-[110ch]">
+      <p className="max-w-[110ch] text-pretty">
         Results are predictions of a model, not device or safety ratings. A continuum result outside its range of
         validity is wrong however precise. Where a prediction is used for the design of apparatus (high-field magnets,
         cryogenics, electrical devices), follow the local rules of the laboratory and the licensed people responsible

@@ -3,7 +3,7 @@ import { Page } from '../components/page.tsx';
 
 export function Component() {
   return (
-    <Page title="No page here">
+    <Page wide title="No page here">
       <p className="my-4 max-w-[60ch] text-ink2">
         The address names no page. A hash from a paper goes into the look-up field at the top.
       </p>

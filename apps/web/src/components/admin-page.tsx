@@ -15,7 +15,7 @@ export function AdminPage({ title, lead, children }: { title: string; lead?: Rea
   const { account } = useSession();
   if (account?.role !== 'admin') {
     return (
-      <Page title={title}>
+      <Page wide title={title}>
         <Note role="alert" title="Only for admins">
           <p>This page shares out the group’s machines and people. Your role is {account?.role ?? 'none'}.</p>
         </Note>

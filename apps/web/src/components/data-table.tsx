@@ -73,7 +73,7 @@ export function DataTable<Row extends object>({
                     <button
                       type="button"
                       onClick={header.column.getToggleSortingHandler()}
-                      className="inline-flex min-h-6 cursor-pointer items-center gap-1.5 hover:text-ink"
+                      className={`inline-flex min-h-6 cursor-pointer items-center gap-1.5 hover:text-ink ${(header.column.columnDef.meta as ColumnMeta | undefined)?.right ? 'flex-row-reverse' : ''}`}
                     >
                       <table.FlexRender header={header} />
                       <span aria-hidden className="w-2 text-least">

@@ -1,7 +1,7 @@
 import { type InputHTMLAttributes, type ReactNode, type SelectHTMLAttributes, useId } from 'react';
 
 export const inputLook =
-  'num min-h-7 w-full min-w-0 border-0 border-b border-rule bg-field px-2 py-0.5 text-ink placeholder:text-ink3 aria-invalid:border-b-2 aria-invalid:border-ink max-margin:min-h-[34px]';
+  'min-h-7 w-full min-w-0 border-0 border-b border-rule bg-field px-2 py-0.5 text-ink placeholder:text-ink3 aria-invalid:border-b-2 aria-invalid:border-ink max-margin:min-h-[34px]';
 
 /** A label, its control, help under it and the error in words. The control gets the ids. */
 export function Labelled({
@@ -50,7 +50,7 @@ type Common = { label: ReactNode; help?: ReactNode; error?: string | undefined }
 export function TextField({ label, help, error, ...rest }: Common & InputHTMLAttributes<HTMLInputElement>) {
   return (
     <Labelled label={label} help={help} error={error}>
-      {(ids) => <input {...rest} {...ids} className={inputLook} />}
+      {(ids) => <input {...rest} {...ids} className={`num ${inputLook}`} />}
     </Labelled>
   );
 }
@@ -65,7 +65,7 @@ export function SelectField({
   return (
     <Labelled label={label} help={help} error={error}>
       {(ids) => (
-        <select {...rest} {...ids} className={inputLook}>
+        <select {...rest} {...ids} className={`text-small ${inputLook}`}>
           {children}
         </select>
       )}

@@ -27,6 +27,7 @@ export function Hours({
   lineTo,
   leastGap,
   clear,
+  until = scale.right,
 }: {
   night: Night;
   scale: NightScale;
@@ -37,6 +38,8 @@ export function Hours({
   leastGap: number;
   /** Half the width of the label for now. */
   clear: number;
+  /** No labels to the right of this. */
+  until?: number;
 }) {
   const nowX = scale.x(now);
   return hourMarks(night, scale.right - scale.left, leastGap).map((mark) => {
@@ -45,8 +48,14 @@ export function Hours({
     return (
       <g key={mark.at}>
         <path d={`M${x} ${lineFrom}V${long ? lineTo : lineFrom + 4}`} stroke="var(--hair)" />
-        {mark.labelled && Math.abs(x - nowX) > clear ? (
-          <text x={x} y={labelY} textAnchor="middle" className="num fill-ink2" fontSize={12}>
+        {mark.labelled && x <= until && Math.abs(x - nowX) > clear ? (
+          <text
+            x={x}
+            y={labelY}
+            textAnchor={x > scale.right - 9 ? 'end' : x < scale.left + 9 ? 'start' : 'middle'}
+            className="num fill-ink2"
+            fontSize={12}
+          >
             {mark.label}
           </text>
         ) : null}

@@ -6,6 +6,9 @@ import { NightText } from './night-text.tsx';
 import { useNight } from './use-night.ts';
 import { useWidth } from './use-width.ts';
 
+/** Below this width the end of one's last job stands in the row of the hours. */
+const narrow = 640;
+
 /** The night strip under the header of the other pages: one's own bars, others as hairs, the end in words. */
 export function NightStripThin() {
   const { night, now } = useNight();
@@ -30,7 +33,17 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
   return (
     <svg aria-hidden="true" width={width} height={44} viewBox={`0 0 ${width} 44`} className="block font-sans">
       <TwilightBand scale={scale} y={0} height={3} />
-      <Hours night={night} scale={scale} now={now} labelY={41} lineFrom={3} lineTo={30} leastGap={120} clear={30} />
+      <Hours
+        night={night}
+        scale={scale}
+        now={now}
+        labelY={41}
+        lineFrom={3}
+        lineTo={30}
+        leastGap={scale.right < narrow ? 80 : 120}
+        until={scale.right < narrow && night.myEnd ? scale.right - 110 : scale.right}
+        clear={30}
+      />
       {mine?.bars.map((bar) => {
         const x = scale.x(bar.from);
         return (
@@ -65,6 +78,16 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
 function EndInWords({ night, end, scale }: { night: Night; end: string; scale: ReturnType<typeof nightScale> }) {
   const x = scale.x(end);
   const right = x + 190 < scale.right;
+  if (scale.right < narrow) {
+    return (
+      <text x={scale.right} y={41} fontSize={12} textAnchor="end" className="fill-ink2">
+        yours end{' '}
+        <tspan className="num fill-ink" fontWeight={700}>
+          {formatClock(end, night.timeZone)}
+        </tspan>
+      </text>
+    );
+  }
   return (
     <text x={right ? x + 8 : x - 8} y={16} fontSize={12} textAnchor={right ? 'start' : 'end'} className="fill-ink2">
       <tspan className="num fill-ink" fontWeight={700}>

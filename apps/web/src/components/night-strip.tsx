@@ -52,9 +52,11 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
       viewBox={`0 0 ${width} ${bottom + 34}`}
       className="block overflow-visible font-sans"
     >
-      <text x={0} y={14} fontSize={12.5} className="fill-ink2">
-        dusk to dawn
-      </text>
+      {narrow ? null : (
+        <text x={0} y={14} fontSize={12.5} className="fill-ink2">
+          dusk to dawn
+        </text>
+      )}
       <Hours
         night={night}
         scale={scale}

@@ -26,7 +26,7 @@ export function Page({
   return (
     <div className="pt-3 pb-10">
       <div className={wide ? '' : 'margin:grid margin:grid-cols-[minmax(0,1fr)_308px] margin:gap-x-11'}>
-        <header className="flex flex-wrap items-end justify-between gap-x-8 gap-y-3 margin:pr-0">
+        <header className="flex flex-wrap items-end justify-between gap-x-8 gap-y-3 margin:flex-nowrap">
           <div className="min-w-0">
             {kicker ? <p className="num text-ink3 text-small">{kicker}</p> : null}
             <h1 id="page-heading" tabIndex={-1} className="outline-none [overflow-wrap:anywhere]">
@@ -36,7 +36,11 @@ export function Page({
               <div className="mt-1 flex flex-wrap items-center gap-x-5 gap-y-1 text-ink2 text-small">{lead}</div>
             ) : null}
           </div>
-          {actions ? <div className="flex flex-wrap items-center gap-x-5 gap-y-2">{actions}</div> : null}
+          {actions ? (
+            <div className="flex flex-wrap items-center gap-x-5 gap-y-2 margin:shrink-0 margin:flex-nowrap max-sm:w-full">
+              {actions}
+            </div>
+          ) : null}
         </header>
         <div
           aria-hidden

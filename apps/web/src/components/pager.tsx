@@ -6,6 +6,7 @@ export function Pager({
   shown,
   total,
   word,
+  many = `${word}s`,
   first,
   next,
   go,
@@ -13,6 +14,7 @@ export function Pager({
   shown: number;
   total: number;
   word: string;
+  many?: string;
   /** Is this the first page? */
   first: boolean;
   next: string | null;
@@ -23,7 +25,9 @@ export function Pager({
       aria-label="Pages of the table"
       className="mt-3 flex flex-wrap items-center gap-x-6 gap-y-2 text-ink2 text-small"
     >
-      <span>{first && next === null ? plural(total, word) : `${formatCount(shown)} of ${plural(total, word)}`}</span>
+      <span>
+        {first && next === null ? plural(total, word, many) : `${formatCount(shown)} of ${plural(total, word, many)}`}
+      </span>
       {first ? null : <TextButton onClick={() => go(undefined)}>First page</TextButton>}
       {next ? <TextButton onClick={() => go(next)}>Next page</TextButton> : null}
     </nav>

@@ -44,7 +44,7 @@ export function ProgressRuler({
   const gap = pitch > 6 ? 1.6 : 1;
   const full = mine ? 'var(--ink)' : 'var(--other)';
   return (
-    <div ref={ref} className="w-full">
+    <div ref={ref} className="w-full min-w-0">
       <svg role="img" aria-label={progressWords(progress, unit)} width={width} height={height} className="block">
         {cells.map((cell, index) => {
           const x = index * pitch;

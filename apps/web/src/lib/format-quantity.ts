@@ -48,7 +48,9 @@ export function formatNumber(value: number, digits = 6): string {
   if (!Number.isFinite(value)) return Number.isNaN(value) ? 'not a number' : value > 0 ? '∞' : '−∞';
   if (value === 0) return '0';
   const size = Math.abs(value);
-  if (size < 1e-4 || size >= 1e9) return minus(value.toExponential(Math.min(digits, 4) - 1));
+  if (size < 1e-4 || size >= 1e9) {
+    return minus(value.toExponential(Math.min(digits, 4) - 1).replace(/\.?0+e/, 'e'));
+  }
   const decimals = Math.max(0, Math.min(20, digits - 1 - Math.floor(Math.log10(size))));
   const fixed = value.toFixed(decimals);
   return minus(fixed.includes('.') ? fixed.replace(/\.?0+$/, '') : fixed);

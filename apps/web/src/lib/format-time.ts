@@ -43,11 +43,13 @@ export function formatDate(at: string | Date, timeZone: string): string {
   return `${part('year')}-${part('month')}-${part('day')}`;
 }
 
-/** The clock alone within 20 hours of now, with its date otherwise. */
+/** The clock alone within 20 hours of now, with the day of the week within 6 days, with its date otherwise. */
 export function formatMoment(at: string | Date, timeZone: string, now: Date = new Date()): string {
   const date = new Date(at);
-  const near = Math.abs(date.getTime() - now.getTime()) < 20 * 3_600_000;
-  return near ? formatClock(date, timeZone) : `${formatDate(date, timeZone)} ${formatClock(date, timeZone)}`;
+  const hours = Math.abs(date.getTime() - now.getTime()) / 3_600_000;
+  const clock = formatClock(date, timeZone);
+  if (hours < 20) return clock;
+  return `${hours < 144 ? formatter(timeZone, { weekday: 'short' }).format(date) : formatDate(date, timeZone)} ${clock}`;
 }
 
 /** ISO date and time with seconds and the zone, for the tooltip. */

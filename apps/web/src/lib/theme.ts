@@ -39,7 +39,7 @@ export function chooseTheme(choice: ThemeChoice): void {
 /** Follows the system and the other tabs. Called once. */
 export function watchTheme(): void {
   darkSystem().addEventListener('change', apply);
-  addEventListener('storage', (event) => event.key === storageKey && apply());
+  window.addEventListener('storage', (event) => event.key === storageKey && apply());
 }
 
 function subscribe(listener: () => void) {

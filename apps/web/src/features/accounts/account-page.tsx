@@ -1,6 +1,5 @@
 import type { Account } from '@nightcone/contracts';
 import { Page } from '../../components/page.tsx';
-import { SheetRow } from '../../components/sheet.tsx';
 import { useSession } from '../../lib/session.ts';
 import { ProfileForm } from './profile-form.tsx';
 import { Sessions } from './sessions.tsx';
@@ -27,15 +26,11 @@ function AccountSheet({ account }: { account: Account }) {
       }
       actions={<SignOutButton />}
     >
-      <SheetRow>
+      <div className="mt-5 flex max-w-[1008px] flex-col gap-10">
         <ProfileForm account={account} />
-      </SheetRow>
-      <SheetRow divided>
         <Tokens />
-      </SheetRow>
-      <SheetRow divided>
         <Sessions />
-      </SheetRow>
+      </div>
     </Page>
   );
 }

@@ -43,6 +43,7 @@ export function Component() {
                 shown={page.rows.length}
                 total={page.total}
                 word="person"
+                many="people"
                 first={!url.cursor}
                 next={page.nextCursor}
                 go={(cursor) => change({ cursor })}
@@ -62,7 +63,7 @@ function PersonRow({ account }: { account: Account }) {
   const self = me?.id === account.id;
   return (
     <li className="border-hair border-b py-2 text-small">
-      <div className="grid items-center gap-x-6 gap-y-1 md:grid-cols-[minmax(10rem,1.4fr)_7rem_8rem_9rem_auto]">
+      <div className="grid items-center gap-x-6 gap-y-1 md:grid-cols-[minmax(10rem,1fr)_7rem_8rem_13rem_6rem]">
         <span className="min-w-0">
           <span className="font-semibold">{account.name}</span> <code className="text-ink2">{account.login}</code>
           {self ? <span className="text-ink3"> you</span> : null}

@@ -11,7 +11,7 @@ export function Component() {
   const returnTo = asked.startsWith('/') && !asked.startsWith('//') ? asked : '/';
   if (account) return <Navigate to={returnTo} replace />;
   return (
-    <Page title="Sign in" heading="The group’s overnight queue">
+    <Page wide title="Sign in" heading="The group’s overnight queue">
       <div className="my-6 flex max-w-[62ch] flex-col gap-5">
         {search.has('failed') ? (
           <Note role="alert" title="The sign-in did not work">

@@ -6,7 +6,7 @@ import { SignOutButton } from './sign-out-button.tsx';
 export function WaitingPage({ account }: { account: Account }) {
   const waiting = account.state === 'waiting';
   return (
-    <Page title={waiting ? 'Waiting to be admitted' : 'This account is deactivated'}>
+    <Page wide title={waiting ? 'Waiting to be admitted' : 'This account is deactivated'}>
       <div className="my-4 flex max-w-[62ch] flex-col gap-3">
         <p>
           You are signed in as <strong className="font-semibold">{account.name}</strong> (<code>{account.login}</code>).

@@ -1,4 +1,5 @@
-import { type Field, formatQuantity, type Json, type ModelDefinition, type SpecificationBody } from '@nightcone/models';
+import type { Field, Json, ModelDefinition, SpecificationBody } from '@nightcone/models';
+import { formatNumber, formatQuantity } from '../../lib/format-quantity.ts';
 
 export interface InputRow {
   /** JSON Pointer: the row's identity. */
@@ -44,7 +45,7 @@ function describe(field: Field, value: Json | undefined, pointer: string): Input
 /** One value in words: `0.142 nm`, `0 … 20 T / 201`, `K, K′`. */
 export function valueText(field: Pick<Field, 'type'> & { unit?: string }, value: Json): string {
   const unit = field.unit ?? '';
-  if (typeof value === 'number') return formatQuantity(value, unit, 12);
+  if (typeof value === 'number') return formatQuantity(value, unit, 12).text;
   if (value === null) return 'none';
   if (typeof value === 'boolean') return value ? 'yes' : 'no';
   if (typeof value === 'string') return value.length === 64 ? value.slice(0, 12) : (valleyNames[value] ?? value);
@@ -52,7 +53,7 @@ export function valueText(field: Pick<Field, 'type'> & { unit?: string }, value:
   if (value.kind === 'auto') return 'auto';
   if (value.kind === 'range') {
     const [start, stop] = [Number(value.start), Number(value.stop)];
-    return `${formatQuantity(start, '', 12)} … ${formatQuantity(stop, unit, 12)} / ${value.count}`;
+    return `${formatNumber(start, 12)} … ${formatNumber(stop, 12)}${unit && ` ${unit}`} / ${value.count}`;
   }
   if (value.kind === 'values' && Array.isArray(value.values)) return listText(value.values, unit);
   if (value.kind === 'whole-zone') return `whole zone / ${value.count}`;
@@ -63,9 +64,7 @@ const valleyNames: Record<string, string> = { K: 'K', 'K-prime': 'K′', both: '
 const most = 6;
 
 function listText(values: readonly Json[], unit: string): string {
-  const shown = values
-    .slice(0, most)
-    .map((each) => (typeof each === 'number' ? formatQuantity(each, '', 8) : String(each)));
+  const shown = values.slice(0, most).map((each) => (typeof each === 'number' ? formatNumber(each, 8) : String(each)));
   const text = values.length > most ? `${shown.join(', ')}, … (${values.length})` : shown.join(', ');
   return unit ? `${text} ${unit}` : text;
 }

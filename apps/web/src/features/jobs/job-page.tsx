@@ -21,7 +21,7 @@ export function Component() {
   const query = useApi('getJob', { params: { hash } });
   if (!query.data) {
     return (
-      <Page title="Job">
+      <Page wide title="Job">
         <QueryView query={query} what="the job">
           {() => null}
         </QueryView>

@@ -50,7 +50,7 @@ export const jobColumns = column.columns([
   }),
   column.accessor('finishedAt', {
     header: 'Finished',
-    meta: { right: true },
+    meta: { right: true, wide: true },
     cell: (cell) => {
       const at = cell.getValue();
       return at === null ? '' : <Clock at={at} />;

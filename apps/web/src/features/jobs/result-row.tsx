@@ -7,8 +7,18 @@ import { FinishedRow } from './finished-row.tsx';
 
 /** The plot with its read-out; before there is a result, how far it is; after a failure, why. */
 export function ResultRow({ job }: { job: JobView }) {
-  if (job.failure) return <FailedRow job={job} failure={job.failure} />;
-  return job.resultDigest ? <FinishedRow job={job} /> : <WaitingRow job={job} />;
+  return (
+    <>
+      <h2 className="sr-only">Result</h2>
+      {job.failure ? (
+        <FailedRow job={job} failure={job.failure} />
+      ) : job.resultDigest ? (
+        <FinishedRow job={job} />
+      ) : (
+        <WaitingRow job={job} />
+      )}
+    </>
+  );
 }
 
 function FailedRow({ job, failure }: { job: JobView; failure: NonNullable<JobView['failure']> }) {

@@ -22,7 +22,7 @@ export function Component() {
               {rows.map((kernel) => (
                 <li
                   key={kernel.digest}
-                  className="grid grid-cols-2 items-baseline gap-x-6 gap-y-1 border-hair border-b py-2 text-small md:grid-cols-[8rem_6rem_1fr_7rem_10rem]"
+                  className="grid grid-cols-2 items-baseline gap-x-6 gap-y-1 border-hair border-b py-2 text-small md:grid-cols-[8rem_6rem_1fr_7rem_14rem]"
                 >
                   <StateMark state={kernel.state} />
                   <span className="num">{kernel.version}</span>

@@ -9,7 +9,11 @@ export function Component() {
   const hash = cleanHash(useParams().hash ?? '');
   const whole = /^[0-9a-f]{64}$/.test(hash);
   return (
-    <Page title="Look up a hash" lead={whole ? <HashMark hash={hash} what="hash" radius={25} /> : <code>{hash}</code>}>
+    <Page
+      wide
+      title="Look up a hash"
+      lead={whole ? <HashMark hash={hash} what="hash" radius={25} /> : <code>{hash}</code>}
+    >
       <div className="mt-5 max-w-[80ch]">
         <LookupHits hash={hash} />
       </div>

@@ -32,7 +32,7 @@ export function OpenWork({ rows }: { rows: readonly Submission[] }) {
     return <p className="py-2 text-ink2">Nothing runs and nothing waits: what you submit now starts at once.</p>;
   }
   return (
-    <>
+    <div className="[--work:6.5rem_minmax(9rem,1.1fr)_minmax(6rem,1fr)_8.5rem_8.5rem]">
       <div
         aria-hidden
         className="hidden grid-cols-(--work) gap-x-5 border-hair border-b pb-1.5 text-ink2 text-small sm:grid"
@@ -43,7 +43,7 @@ export function OpenWork({ rows }: { rows: readonly Submission[] }) {
         <span className="text-right">done</span>
         <span className="text-right">expected end</span>
       </div>
-      <ul className="[--work:6.5rem_minmax(9rem,1.1fr)_minmax(6rem,1fr)_8.5rem_8.5rem]">
+      <ul>
         {shown.map((row) => (
           <WorkRow key={row.id} row={row} />
         ))}
@@ -56,7 +56,7 @@ export function OpenWork({ rows }: { rows: readonly Submission[] }) {
           </li>
         ) : null}
       </ul>
-    </>
+    </div>
   );
 }
 
@@ -65,11 +65,11 @@ function WorkRow({ row }: { row: Submission }) {
   const name = row.mine ? row.title : `${row.owner.label}, ${modelWords(row.model)}`;
   const state = workState(row);
   return (
-    <li className="grid grid-cols-[1fr_auto] items-center gap-x-5 gap-y-1 border-hair border-b py-[7px] text-small sm:grid-cols-(--work)">
+    <li className="grid grid-cols-[minmax(0,1fr)_auto] items-center gap-x-5 gap-y-1 border-hair border-b py-[7px] text-small sm:grid-cols-(--work)">
       <span className="max-sm:order-2 max-sm:text-right">
         <StateMark state={state} />
       </span>
-      <span className={`min-w-0 truncate max-sm:order-1 ${row.mine ? 'font-semibold' : ''}`}>
+      <span className={`min-w-0 sm:truncate max-sm:order-1 ${row.mine ? 'font-semibold' : ''}`}>
         {row.mine && to ? (
           <Link to={to} className="border-transparent border-b hover:border-ink" title={name}>
             {name}
@@ -78,10 +78,10 @@ function WorkRow({ row }: { row: Submission }) {
           name
         )}
       </span>
-      <span className="max-sm:order-3 max-sm:col-span-2">
+      <span className="min-w-0 max-sm:order-3 max-sm:col-span-2">
         <ProgressRuler progress={row.progress} unit={row.unit} mine={row.mine} />
       </span>
-      <span className="num whitespace-nowrap max-sm:order-4 sm:text-right">
+      <span className="num sm:whitespace-nowrap max-sm:order-4 sm:text-right">
         {formatCount(row.progress.done)} of {formatCount(row.progress.total)} {row.unit}
       </span>
       <span className="text-right max-sm:order-5">

@@ -23,7 +23,7 @@ export function QuotaLevel({ quota, now }: { quota: Quota; now: number }) {
   const reserved = y(quota.usedMs + quota.reservedMs);
   const today = Math.min(6, Math.floor((now - from) / dayMs));
   // The two labels at the right keep their distance.
-  const reservedLabel = Math.min(reserved + 4, used - 12);
+  const reservedLabel = Math.min(reserved + 4, used - 24);
   const grantedLabel = Math.min(y(quota.grantedMs) + 4, reservedLabel - 16);
   const cpu = (ms: number) => cpuParts(ms);
   return (
@@ -84,7 +84,10 @@ export function QuotaLevel({ quota, now }: { quota: Quota; now: number }) {
           </text>
           {quota.reservedMs > 0 ? (
             <text x={right + 8} y={reservedLabel} className="fill-ink">
-              {cpu(quota.usedMs + quota.reservedMs).value} with res.
+              {cpu(quota.usedMs + quota.reservedMs).value} with
+              <tspan x={right + 8} dy={13}>
+                reserved
+              </tspan>
             </text>
           ) : null}
           <text x={right + 8} y={used + 4} className="fill-ink" fontWeight={700}>

@@ -1,5 +1,6 @@
 import type { Sweep, SweepPoint } from '@nightcone/contracts';
-import { findModel, formatQuantity, type Json, pointerTokens, type SpecificationBody, typeAt } from '@nightcone/models';
+import { findModel, type Json, pointerTokens, type SpecificationBody, typeAt } from '@nightcone/models';
+import { formatQuantity } from '../../lib/format-quantity.ts';
 
 export interface AxisName {
   pointer: string;
@@ -35,7 +36,7 @@ export function pointWords(names: readonly AxisName[], values: SweepPoint['value
 }
 
 export function valueWords(value: Json, unit: string): string {
-  if (typeof value === 'number') return formatQuantity(value, unit, 8);
+  if (typeof value === 'number') return formatQuantity(value, unit, 8).text;
   if (typeof value === 'string') return value;
   if (typeof value === 'object' && value !== null && 'kind' in value) return String(value.kind);
   return JSON.stringify(value);

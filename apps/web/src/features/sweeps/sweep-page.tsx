@@ -27,7 +27,7 @@ export function Component() {
   const query = useApi('getSweep', { params: { id } });
   if (!query.data) {
     return (
-      <Page title="Sweep">
+      <Page wide title="Sweep">
         <QueryView query={query} what="the sweep">
           {() => null}
         </QueryView>
@@ -45,6 +45,7 @@ function SweepSheet({ sweep }: { sweep: Sweep }) {
   const tenths = Math.floor((10 * progress.done) / Math.max(1, progress.total));
   return (
     <Page
+      wide
       title={sweep.title}
       lead={
         <>

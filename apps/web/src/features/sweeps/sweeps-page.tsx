@@ -67,7 +67,7 @@ export function Component() {
 function SweepRow({ row }: { row: Row }) {
   const progress = sweepProgress(row);
   return (
-    <li className="grid grid-cols-[1fr_auto] items-center gap-x-6 gap-y-1 border-hair border-b py-2.5 text-small md:grid-cols-[7.5rem_minmax(10rem,1.5fr)_minmax(8rem,1fr)_9rem_9rem]">
+    <li className="grid grid-cols-[minmax(0,1fr)_auto] items-center gap-x-6 gap-y-1 border-hair border-b py-2.5 text-small md:grid-cols-[7.5rem_minmax(10rem,1.5fr)_minmax(8rem,1fr)_9rem_9rem]">
       <span className="max-md:order-2">
         <StateMark state={sweepStateWord(row)} />
       </span>
@@ -77,7 +77,7 @@ function SweepRow({ row }: { row: Row }) {
         </Link>
         <span className="block text-ink3">{modelWords(row.model)}</span>
       </span>
-      <span className="max-md:order-3 max-md:col-span-2">
+      <span className="min-w-0 max-md:order-3 max-md:col-span-2">
         <ProgressRuler progress={progress} unit="jobs" />
       </span>
       <span className="num max-md:order-4 md:text-right">
