@@ -2,7 +2,7 @@
 
 import { createServer } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { type Db, saveSettings } from '@nightcone/db';
+import { adjustQuota, type Db, findQuota, saveSettings } from '@nightcone/db';
 import { createTestDatabase } from '@nightcone/db/testing';
 import { pino } from 'pino';
 import request from 'supertest';
@@ -25,6 +25,8 @@ export interface TestApi {
   anonymous: () => Agent;
   /** Signed in through the provider; all but the newcomer are admitted with their roles. */
   as: (login: Login) => Promise<Agent>;
+  /** Grants or takes so that this many milliseconds are free this week. */
+  setFreeQuota: (login: Login, ms: number) => Promise<void>;
   stop: () => Promise<void>;
 }
 
@@ -91,6 +93,12 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
     agents.set(login, agent);
     return agent;
   };
+  const setFreeQuota = async (login: Login, ms: number) => {
+    const { body } = await (await as(login)).get('/api/v1/session').expect(200);
+    const { grantedMs, usedMs, reservedMs } = await findQuota(db, body.account.id);
+    const change = ms - (grantedMs - usedMs - reservedMs);
+    await adjustQuota(db, nobody, { accountId: body.account.id, ms: change, reason: 'test' });
+  };
   const stop = async () => {
     server.closeAllConnections();
     await new Promise((resolve) => server.close(resolve));
@@ -98,7 +106,7 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
     await provider.close();
     await database.drop();
   };
-  return { url, provider, db, databaseUrl: database.url, anonymous, as, stop };
+  return { url, provider, db, databaseUrl: database.url, anonymous, as, setFreeQuota, stop };
 }
 
 const nobody = { accountId: null, requestId: null };

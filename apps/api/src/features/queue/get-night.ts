@@ -76,7 +76,7 @@ function comingBars({ forecast, open }: Schedule, span: Span): LaneBar[] {
     if (from >= span.to) return [];
     const row = rows.get(submissionId);
     const state = row?.startedAt ? 'estimated' : 'waiting';
-    const end = to > span.to ? span.to : to;
+    const end = new Date(Math.min(to.getTime(), span.to.getTime()));
     const times = { from: from.toISOString(), to: end.toISOString() };
     return [{ submissionId, accountId, title: row?.title ?? null, state, ...times, slots } as const];
   });
