@@ -39,7 +39,7 @@ export const examples: WorkedExample[] = [
       carrierPerNm2: 0,
       energyEv: { kind: 'range', start: -0.4, stop: 0.4, count: 401 },
     },
-    sweep: [{ pointers: ['/parameters/system/electricFieldEvPerNm'], values: tenThousandths(88) }],
+    sweep: [{ pointers: ['/system/electricFieldEvPerNm'], values: tenThousandths(88) }],
   },
   {
     id: 'two-layers-and-a-bias',
@@ -53,7 +53,7 @@ export const examples: WorkedExample[] = [
       levels: 8,
       energyEv: { kind: 'range', start: -0.3, stop: 0.3, count: 601 },
     },
-    sweep: [{ pointers: ['/parameters/system/biasEv'], values: [[0], [0.02], [0.05], [0.1]] }],
+    sweep: [{ pointers: ['/system/biasEv'], values: [[0], [0.02], [0.05], [0.1]] }],
   },
   {
     id: 'skew-hopping-at-low-field',
