@@ -9,6 +9,7 @@ interface Level {
   spin: number;
   n: number;
   energy: number;
+  error: number | null;
 }
 
 /** Level n of column `level`: from the kernel's list, else −N…N. */
@@ -23,6 +24,7 @@ export function buildLandauFan(data: ResultData): BuiltPlot {
   const [, valleyCount = 1, spinCount = 1, levelCount = 1] = energies.shape;
   const chosen = data.body.parameters.valleys;
   const valleys: Level['valley'][] = chosen === 'both' ? ['K', 'K-prime'] : [chosen === 'K-prime' ? 'K-prime' : 'K'];
+  const errors = data.arrays.get('energyErrorEv')?.values;
   const marks: Mark[] = [];
   const shown: Level[] = [];
   const ends = new Map<number, number>();
@@ -35,7 +37,8 @@ export function buildLandauFan(data: ResultData): BuiltPlot {
           const at = ((f * valleyCount + v) * spinCount + s) * levelCount + l;
           if (!isValid(data, 'energies', at)) return Number.NaN;
           const energy = energies.values[at] as number;
-          shown.push({ field, valley, spin: s, n, energy });
+          const error = errors?.[(f * valleyCount + v) * levelCount + l] ?? null;
+          shown.push({ field, valley, spin: s, n, energy, error });
           if (f === fields.length - 1) ends.set(n, energy);
           return energy;
         });
@@ -69,7 +72,7 @@ export function buildLandauFan(data: ResultData): BuiltPlot {
       describe(i) {
         const level = shown[i] as Level;
         return {
-          value: formatQuantity(level.energy, 'eV'),
+          value: formatQuantity(level.energy, 'eV', level.error),
           description: `level n = ${level.n}, ${level.valley === 'K' ? 'valley K' : 'valley K′'}${spinWords(spinCount, level.spin)}`,
           rows: [
             { symbol: 'B', label: 'magnetic field', value: formatQuantity(level.field, 'T') },
@@ -92,11 +95,14 @@ export function buildLandauFan(data: ResultData): BuiltPlot {
         { label: 'spin', unit: '' },
         { label: 'n', unit: '' },
         { label: 'E', unit: 'eV' },
+        { label: 'error', unit: 'eV' },
       ],
       rows: shown.length,
       cell(row, column) {
         const level = shown[row] as Level;
-        return [level.field, level.valley, level.spin, level.n, level.energy][column] as number | string;
+        return [level.field, level.valley, level.spin, level.n, level.energy, level.error ?? ''][column] as
+          | number
+          | string;
       },
     },
   };

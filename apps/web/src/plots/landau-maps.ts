@@ -3,28 +3,58 @@ import { type BuiltPlot, domainOf, rangeOf } from './built-plot.ts';
 import { buildGridMap } from './grid-map.ts';
 import { axisOf, isValid, need, type ResultData } from './result-data.ts';
 
-/** Broadened density of states over field and energy; one field alone as a line. */
-export function buildLandauDensity(data: ResultData): BuiltPlot {
+interface OverEnergy {
+  array: string;
+  label: string;
+  symbol: string;
+  words: string;
+  signed?: boolean;
+}
+
+export const buildLandauDensity = (data: ResultData) =>
+  buildOverEnergy(data, {
+    array: 'density',
+    label: 'density of states',
+    symbol: '\\rho',
+    words: 'Density of states of the listed levels, all spins and valleys of the question counted',
+  });
+
+export const buildHallPlateaus = (data: ResultData) =>
+  buildOverEnergy(data, {
+    array: 'hallPlateaus',
+    label: 'Hall conductivity',
+    symbol: '\\sigma_{xy}',
+    words: 'Hall plateaus of sharp levels at zero temperature with the Fermi energy at E',
+    signed: true,
+  });
+
+/** An array over field and energy as a map; one field or one energy alone as a line. Absent entries stay empty. */
+function buildOverEnergy(
+  data: ResultData,
+  { array, label: quantity, symbol: letter, words, signed }: OverEnergy,
+): BuiltPlot {
   const fields = axisOf(data, 'fieldT');
   const energies = axisOf(data, 'energyEv');
-  const density = need(data, 'density');
-  const unit = density.unit || '1/(eV nm²)';
+  const found = need(data, array);
+  const unit = found.unit;
+  const values = Array.from(found.values, (value, i) => (isValid(data, array, i) ? Number(value) : Number.NaN));
   if (fields.length > 1 && energies.length > 1)
     return buildGridMap({
-      caption: 'Density of states over field and energy, all spins and valleys of the question counted.',
+      caption: `${words}.`,
       x: { symbol: 'B', label: 'magnetic field', unit: 'T', values: fields },
       y: { symbol: 'E', label: 'energy', unit: 'eV', values: energies },
-      z: { symbol: 'D', label: 'density of states', unit },
-      values: density.values,
+      z: { symbol: letter, label: quantity, unit },
+      values,
+      ...(signed ? { signed } : {}),
     });
   const along = fields.length > 1 ? fields : energies;
   const [symbol, axisUnit, label] = fields.length > 1 ? ['B', 'T', 'magnetic field'] : ['E', 'eV', 'energy'];
-  const y = Array.from(density.values, Number);
+  const y = values;
   return {
     plot: {
-      caption: 'Density of states, all spins and valleys of the question counted.',
+      caption: `${words}.`,
       x: { symbol: symbol as string, unit: axisUnit as string, domain: domainOf(along) },
-      y: { symbol: 'D', unit, domain: rangeOf([y, [0]], [0, 1]) },
+      y: { symbol: letter, unit, domain: rangeOf([y, [0]], [0, 1]) },
       marks: [{ kind: 'line', role: 'ink', x: along, y }],
     },
     targets: {
@@ -32,7 +62,7 @@ export function buildLandauDensity(data: ResultData): BuiltPlot {
       y,
       describe: (i) => ({
         value: formatQuantity(y[i] as number, unit),
-        description: 'density of states',
+        description: quantity,
         rows: [
           {
             symbol: symbol as string,
@@ -45,7 +75,7 @@ export function buildLandauDensity(data: ResultData): BuiltPlot {
     table: {
       columns: [
         { label: label as string, unit: axisUnit as string },
-        { label: 'density of states', unit },
+        { label: quantity, unit },
       ],
       rows: along.length,
       cell: (row, column) => (column === 0 ? along[row] : y[row]) as number,

@@ -1,6 +1,6 @@
 import type { BuiltPlot } from './built-plot.ts';
 import { buildLandauFan } from './landau-fan.ts';
-import { buildFermiEnergy, buildLandauDensity } from './landau-maps.ts';
+import { buildFermiEnergy, buildHallPlateaus, buildLandauDensity } from './landau-maps.ts';
 import type { ResultData } from './result-data.ts';
 import { buildRibbonBands } from './ribbon-bands.ts';
 import { buildRibbonChannels } from './ribbon-channels.ts';
@@ -21,15 +21,22 @@ const byModel: Record<string, readonly View[]> = {
       id: 'fan',
       label: 'levels',
       needs: ['energies'],
-      optional: ['energiesValid', 'levelIndex', 'fieldT'],
+      optional: ['energiesValid', 'energyErrorEv', 'levelIndex', 'fieldT'],
       build: buildLandauFan,
     },
     {
       id: 'density',
       label: 'density of states',
       needs: ['density'],
-      optional: ['fieldT', 'energyEv'],
+      optional: ['densityValid', 'fieldT', 'energyEv'],
       build: buildLandauDensity,
+    },
+    {
+      id: 'hall',
+      label: 'Hall plateaus',
+      needs: ['hallPlateaus'],
+      optional: ['hallPlateausValid', 'fieldT', 'energyEv'],
+      build: buildHallPlateaus,
     },
     {
       id: 'filling',

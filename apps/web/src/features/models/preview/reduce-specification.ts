@@ -27,22 +27,25 @@ export function reduceSpecification(
   budget = budgetMs * operationsPerMs,
 ): ReducedSpecification {
   let reduced = body;
-  const stated: string[] = [];
+  // by place: an axis that is thinned twice is stated once, against what was asked
+  const stated = new Map<string, string>();
   for (const reduction of model.preview) {
     if (evaluateExpression(model.cost, model, reduced) <= budget) break;
-    const next = reduce(reduced, reduction);
+    const next = reduce(reduced, reduction, body);
     if (!next) continue;
     reduced = next.body;
-    stated.push(next.stated);
+    stated.set(reduction.pointer, next.stated);
   }
-  return { body: reduced, stated };
+  return { body: reduced, stated: [...stated.values()] };
 }
 
 function reduce(
   body: SpecificationBody,
   reduction: PreviewReduction,
+  whole: SpecificationBody,
 ): { body: SpecificationBody; stated: string } | null {
   const document = body as unknown as Json;
+  const asked = getPointer(whole as unknown as Json, reduction.pointer);
   const value = getPointer(document, reduction.pointer);
   const put = (next: Json) => setPointer(document, reduction.pointer, next) as unknown as SpecificationBody;
   const name = reduction.pointer.split('/').at(-1) ?? '';
@@ -51,7 +54,10 @@ function reduce(
     const next = value === undefined ? null : thinAxis(value, reduction.axisCount);
     if (!next) return null;
     const after = axisCount(next);
-    return { body: moveStates(put(next), name, before, after), stated: `${after} of ${before} ${axisWord(name)}` };
+    return {
+      body: moveStates(put(next), name, before, after),
+      stated: `${after} of ${axisCount(asked)} ${axisWord(name)}`,
+    };
   }
   if ('nearestCount' in reduction) {
     if (!isObject(value) || value.kind !== 'nearest' || Number(value.count) <= reduction.nearestCount) return null;
@@ -67,7 +73,7 @@ function reduce(
     return { body: put({ kind: 'single', cells }), stated: `one grid of ${cells} cells` };
   }
   if (typeof value !== 'number' || value <= reduction.integer) return null;
-  return { body: put(reduction.integer), stated: `${name} ${reduction.integer} of ${value}` };
+  return { body: put(reduction.integer), stated: `${name} ${reduction.integer} of ${asked}` };
 }
 
 /** Fewer points of the same axis: an odd count, both ends and the centre kept. */
