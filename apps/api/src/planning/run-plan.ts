@@ -48,8 +48,11 @@ export async function runPlan(
         if (errors.length < namedErrors) errors.push(tooLarge);
         continue;
       }
-      if (probes.has(index)) probeKernel(kernel, made.value, point);
-      notes.add(index, question.notes(made.value));
+      const found = question.notes(made.value);
+      notes.add(index, found);
+      // What a note refuses is said by the note, in words about the model.
+      const refused = found.some(({ severity }) => severity === 'refuse');
+      if (probes.has(index) && !refused) probeKernel(kernel, made.value, point);
       first ??= { hash: point.hash, canonicalText: point.canonicalText ?? '' };
       points.push(full ? await question.completed(point, made.value) : { ...point, canonicalText: undefined });
     }

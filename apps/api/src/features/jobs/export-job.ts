@@ -30,7 +30,9 @@ export const exportJob: Handler<typeof endpoints.exportJob> = async ({ ctx, inpu
     jobHash: hash,
     resultDigest,
     result: {
-      arrays: await Promise.all(arrays.map(async (array) => ({ ...array, bytes: await aligned(db, array.sha256) }))),
+      arrays: await Promise.all(
+        arrays.map(async ({ sha256, bytes: _, ...array }) => ({ ...array, bytes: await aligned(db, sha256) })),
+      ),
       certificate,
     },
     notes: definition ? validityOf(definition, specification) : [],
