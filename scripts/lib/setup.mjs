@@ -82,17 +82,14 @@ export function command(title, file, args, options = {}) {
 export const node = (title, args, options) => command(title, process.execPath, args, options);
 export const typescript = (title, file, args = [], options) => node(title, ['--import', 'tsx', file, ...args], options);
 
-/** The packages of the lock file. */
+/** The packages of the lock file. A tree that npm itself finds complete is taken as it is. */
 export async function ensurePackages() {
-  await onceFor(
-    'packages',
-    ['package-lock.json', 'package.json', '.npmrc'],
-    'node_modules/.package-lock.json',
-    async () => {
-      say('Installing packages (npm ci) …');
-      await command('npm ci', 'npm', ['ci', '--no-audit', '--no-fund']);
-    },
-  );
+  await onceFor('packages', ['package-lock.json', 'package.json', '.npmrc'], 'node_modules', async () => {
+    if (fs.existsSync(path.join(root, 'node_modules')) && spawnSync('npm', ['ls', '--all'], { cwd: root }).status === 0)
+      return;
+    say('Installing packages (npm ci) …');
+    await command('npm ci', 'npm', ['ci', '--no-audit', '--no-fund']);
+  });
 }
 
 export async function ensureKernel() {
