@@ -12,6 +12,7 @@ export interface PoolOptions {
 /**
  * A pool that survives restarts of the server. `query_timeout` ends queries on half-open connections, and a client that
  * is checked out has no listener of the pool, so each gets its own: an 'error' event without a listener ends the process.
+ * A process that stops or a machine that vanishes inside a transaction must not hold its locks: the server ends it.
  */
 export function createPool(connectionString: string, { max = 10, onError = () => {} }: PoolOptions = {}): pg.Pool {
   const pool = new pg.Pool({
@@ -19,6 +20,7 @@ export function createPool(connectionString: string, { max = 10, onError = () =>
     max,
     connectionTimeoutMillis: 5_000,
     query_timeout: 30_000,
+    idle_in_transaction_session_timeout: 5_000,
     keepAlive: true,
     application_name: 'nightcone',
   });
