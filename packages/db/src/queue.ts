@@ -163,14 +163,16 @@ export class Queue {
 
   /**
    * Ends an attempt in good order, after the last `record`: what was not recorded goes back to the backlog, or is
-   * dropped when the submission is cancelled. Also for a yield and for a stop of the worker.
+   * dropped when the submission is cancelled. Also for a yield and for a stop of the worker. False: the lease had ended
+   * before, taken away or by this very call, whose answer was lost.
    */
-  finish(chunk: Chunk): Promise<void> {
+  finish(chunk: Chunk): Promise<boolean> {
     return this.#repeat(() =>
       this.#transaction(async (client) => {
-        if (!(await dropLease(client, chunk))) return;
+        if (!(await dropLease(client, chunk))) return false;
         await closeChunk(client, chunk.id);
         await this.#boss.deleteJob(tickets, chunk.id, { db: inTransaction(client) });
+        return true;
       }),
     );
   }

@@ -101,7 +101,7 @@ export class ChunkRun {
     await this.#recorder.drain();
     if (this.isLost) return undefined;
     if (this.#failure === undefined) {
-      await this.options.queue.finish(this.chunk);
+      if (!(await this.options.queue.finish(this.chunk))) this.#order = 'lost';
       return undefined;
     }
     const lostUs = Math.max(0, Math.round((this.#earlierCpuMs - this.#recordedCpuMs) * 1000));

@@ -45,7 +45,7 @@ function fakeQueue(orders: (Order | Error)[] = []) {
       return answer;
     },
     payloads: async () => [Uint8Array.of(4), Uint8Array.of(5)],
-    finish: async () => void calls.push(['finish']),
+    finish: async () => calls.push(['finish']) > 0,
     crash: async (_chunk: Chunk, reason: string, cpuUs: number) => void calls.push(['crash', reason, cpuUs >= 0]),
   };
 }
