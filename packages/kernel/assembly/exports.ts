@@ -8,11 +8,13 @@ import { modelAssemble, modelAssembleCost, modelComputeSlice, modelOpen, modelSl
 import { openPayloads, outputAddress, outputBytes, setOutput } from "./payload";
 import { INTERFACE_VERSION, openRecord, recordStatus } from "./record";
 import { INVALID_RECORD, OK, OUT_OF_ORDER, PAYLOAD_MISMATCH } from "./status";
+import * as continuumRibbon from "./models/continuum-ribbon";
 import * as landauLevels from "./models/landau-levels";
 
 function selectModel(index: i32): bool {
   switch (index) {
     case 0: return use(landauLevels.open, landauLevels.sliceCount, landauLevels.sliceCost, landauLevels.computeSlice, landauLevels.assemble, landauLevels.assembleCost);
+    case 1: return use(continuumRibbon.open, continuumRibbon.sliceCount, continuumRibbon.sliceCost, continuumRibbon.computeSlice, continuumRibbon.assemble, continuumRibbon.assembleCost);
   }
   return false;
 }

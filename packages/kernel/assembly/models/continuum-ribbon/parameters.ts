@@ -26,18 +26,18 @@ export let velocity: f64 = 0;
 /** Signed 1/l² = eB/ħ in 1/nm². */
 export let inverseArea: f64 = 0;
 export let fieldT: f64 = 0;
-export let kAxis: Axis;
-export let potential: Profile;
-export let mass: Profile;
-export let valleyMass: Profile;
-export let gauge: Profile;
-export let fieldProfile: Profile;
+export let kAxis: Axis = changetype<Axis>(0);
+export let potential: Profile = changetype<Profile>(0);
+export let mass: Profile = changetype<Profile>(0);
+export let valleyMass: Profile = changetype<Profile>(0);
+export let gauge: Profile = changetype<Profile>(0);
+export let fieldProfile: Profile = changetype<Profile>(0);
 export let spinCount: i32 = 1;
 /** Channels are counted this many times. */
 export let spinFactor: f64 = 1;
 /** Spin s = ±1 shifts the energies by s times this. */
 export let zeemanEv: f64 = 0;
-export let energyAxis: Axis;
+export let energyAxis: Axis = changetype<Axis>(0);
 export let temperatureK: f64 = 0;
 export let isWindow: bool = false;
 export let windowMin: f64 = 0;
