@@ -153,6 +153,18 @@ export function stopPostgres(purpose) {
     run([path.join(requirePostgres(), 'pg_ctl'), '-D', state.data, '-m', 'fast', '-w', 'stop'], { stdio: 'ignore' });
 }
 
+/** Restarts the running server on its port: `fast` ends its sessions, `immediate` is a crash with recovery. */
+export function restartPostgres(purpose, mode) {
+  const state = readState(folders(purpose));
+  if (!state) throw new Error(`there is no server for ${purpose}`);
+  const log = path.join(state.data, 'server.log');
+  const done = run(
+    [path.join(requirePostgres(), 'pg_ctl'), '-D', state.data, '-m', mode, '-w', '-t', '60', '-l', log, 'restart'],
+    { stdio: 'ignore' },
+  );
+  if (done.status !== 0) throw new Error(`PostgreSQL did not restart:\n${fs.readFileSync(log, 'utf8').slice(-2000)}`);
+}
+
 async function main([command, ...rest]) {
   const purpose = rest[0] === '--purpose' ? rest[1] : 'main';
   if (purpose !== 'main' && purpose !== 'test') throw new Error(`--purpose is main or test, not ${purpose}`);

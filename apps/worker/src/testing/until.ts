@@ -1,9 +1,15 @@
-import { listen } from '@nightcone/db';
+import { isTransient, listen } from '@nightcone/db';
 
 export interface Watch {
   /** Resolves with the first answer that is not null or false; asks at every message of the queue, and four times a second. */
   until<T>(what: string, ask: () => Promise<T | null | false>, timeoutMs?: number): Promise<T>;
   stop(): Promise<void>;
+}
+
+/** A server that restarts has no answer yet. */
+function nullWhileAway(error: unknown): null {
+  if (!isTransient(error)) throw error;
+  return null;
 }
 
 /** Waits for states of a database instead of for times. */
@@ -26,7 +32,7 @@ export function watchDatabase(url: string): Watch {
     async until(what, ask, timeoutMs = 30_000) {
       const deadline = performance.now() + timeoutMs;
       for (;;) {
-        const answer = await ask();
+        const answer = await ask().catch(nullWhileAway);
         if (answer !== null && answer !== false) return answer;
         if (performance.now() > deadline) throw new Error(`waited ${timeoutMs} ms in vain until ${what}`);
         await nextChange();
