@@ -49,7 +49,7 @@ export function QuantityControl({ name, field, value }: { name: string; field: F
             spellCheck={false}
             aria-invalid={error ? true : undefined}
             aria-describedby={described || undefined}
-            className={inputLook}
+            className={`num ${inputLook}`}
             style={unit ? { paddingRight: `${unit.length * 0.62 + 1.1}em` } : undefined}
             onKeyDown={onKeyDown}
             onFocus={() => showHelp(field.display ? { title: field.display.title, help: helpOf(field) } : null)}
