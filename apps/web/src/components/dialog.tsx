@@ -21,6 +21,13 @@ export function Dialog({
         <Radix.Overlay className="fixed inset-0 z-40 bg-ink/35 night:bg-[oklch(10%_0.02_275/0.7)]" />
         <Radix.Content
           {...(description ? {} : { 'aria-describedby': undefined })}
+          onOpenAutoFocus={(event) => {
+            // A dialog that asks for something starts there, not at its Close.
+            const field = (event.currentTarget as HTMLElement).querySelector<HTMLElement>('input, select, textarea');
+            if (!field) return;
+            event.preventDefault();
+            field.focus();
+          }}
           className="fixed top-[12vh] left-1/2 z-50 max-h-[80vh] w-[min(36rem,calc(100vw-2rem))] -translate-x-1/2 overflow-auto border border-ink bg-ground p-5 outline-none"
         >
           <div className="mb-3 flex items-baseline justify-between gap-4">

@@ -1,6 +1,6 @@
 import type { Night } from '@nightcone/contracts';
 import { expect, test } from 'vitest';
-import { hourMarks, nightScale, placeLane, slotHeight } from './night-layout.ts';
+import { hourMarks, nightScale, placeLane, slotHeight, twilight } from './night-layout.ts';
 
 const night = { from: '2026-02-12T16:00:00Z', to: '2026-02-13T07:00:00Z', timeZone: 'Europe/Berlin' };
 const scale = nightScale(night, 100, 1600);
@@ -71,4 +71,13 @@ test('bars at the same time stand on each other', () => {
 test('a machine of two slots has bars that can be seen', () => {
   expect(slotHeight(32)).toBe(2.2);
   expect(slotHeight(2) * 2).toBe(16);
+});
+
+test('twilight follows the night window, and by day the strip begins with day', () => {
+  const window = { from: '2026-02-12T19:00:00Z', to: '2026-02-13T05:00:00Z', open: false };
+  const sky = twilight({ from: '2026-02-12T11:00:00Z', to: '2026-02-13T07:00:00Z', window });
+  expect(sky.map(({ step }) => step)).toEqual([1, 2, 3, 4, 3, 2, 1]);
+  expect(sky[0]?.from).toBe(Date.parse('2026-02-12T11:00:00Z'));
+  expect(sky[3]?.from).toBe(Date.parse('2026-02-12T18:40:00Z'));
+  for (let i = 1; i < sky.length; i++) expect(sky[i]?.from).toBe(sky[i - 1]?.to);
 });

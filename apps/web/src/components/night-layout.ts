@@ -79,13 +79,39 @@ export function placeLane(lane: Lane, scale: NightScale, perSlot: number): Place
   return { lane, bars: placed, height: placed.reduce((top, bar) => Math.max(top, bar.offset + bar.height), 0) };
 }
 
-/** Four flat steps of twilight between dusk and night, the same towards dawn: fractions of the band, darkest 4. */
-export const twilightSteps: readonly [from: number, to: number, step: 1 | 2 | 3 | 4][] = [
-  [0, 0.04, 1],
-  [0.04, 0.077, 2],
-  [0.077, 0.114, 3],
-  [0.114, 0.886, 4],
-  [0.886, 0.923, 3],
-  [0.923, 0.96, 2],
-  [0.96, 1, 1],
+export interface Twilight {
+  from: number;
+  to: number;
+  /** 1 day … 4 night */
+  step: 1 | 2 | 3 | 4;
+}
+
+const minute = 60_000;
+/** Flat steps of twilight around the group's night window: minutes before it opens and after it closes. */
+const steps: readonly [minutes: number, step: 1 | 2 | 3][] = [
+  [100, 1],
+  [60, 2],
+  [20, 3],
 ];
+
+/** The sky from dusk to dawn. It follows the night window, not the sun: the group's place is not known. */
+export function twilight(night: Pick<Night, 'from' | 'to' | 'window'>): Twilight[] {
+  const [from, to] = [ms(night.from), ms(night.to)];
+  const [opens, closes] = [ms(night.window.from), ms(night.window.to)];
+  const edges: Twilight[] = [];
+  let start = from;
+  for (const [minutes, step] of steps) {
+    edges.push({ from: start, to: opens - minutes * minute, step });
+    start = opens - minutes * minute;
+  }
+  let end = to;
+  for (const [minutes, step] of steps) {
+    edges.push({ from: closes + minutes * minute, to: end, step });
+    end = closes + minutes * minute;
+  }
+  edges.push({ from: start, to: end, step: 4 });
+  return edges
+    .map((edge) => ({ ...edge, from: Math.max(from, edge.from), to: Math.min(to, edge.to) }))
+    .filter((edge) => edge.to > edge.from)
+    .sort((a, b) => a.from - b.from);
+}

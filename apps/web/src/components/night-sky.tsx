@@ -1,16 +1,25 @@
 import type { Night } from '@nightcone/contracts';
 import { formatClock } from '../lib/format-time.ts';
-import { hourMarks, type NightScale, twilightSteps } from './night-layout.ts';
+import { hourMarks, type NightScale, twilight } from './night-layout.ts';
 
 /** The twilight band over the strip. */
-export function TwilightBand({ scale, y, height }: { scale: NightScale; y: number; height: number }) {
-  const width = scale.right - scale.left;
-  return twilightSteps.map(([from, to, step]) => (
+export function TwilightBand({
+  night,
+  scale,
+  y,
+  height,
+}: {
+  night: Night;
+  scale: NightScale;
+  y: number;
+  height: number;
+}) {
+  return twilight(night).map(({ from, to, step }) => (
     <rect
       key={from}
-      x={scale.left + from * width}
+      x={scale.x(from)}
       y={y}
-      width={(to - from) * width}
+      width={scale.x(to) - scale.x(from)}
       height={height}
       fill={`var(--twilight-${step})`}
     />

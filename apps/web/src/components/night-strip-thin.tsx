@@ -32,7 +32,7 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
   const gap = Math.min(2.6, 13 / Math.max(1, others.length));
   return (
     <svg aria-hidden="true" width={width} height={44} viewBox={`0 0 ${width} 44`} className="block font-sans">
-      <TwilightBand scale={scale} y={0} height={3} />
+      <TwilightBand night={night} scale={scale} y={0} height={3} />
       <Hours
         night={night}
         scale={scale}
@@ -42,7 +42,7 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
         lineTo={30}
         leastGap={scale.right < narrow ? 80 : 120}
         until={scale.right < narrow && night.myEnd ? scale.right - 110 : scale.right}
-        clear={30}
+        clear={44}
       />
       {mine?.bars.map((bar) => {
         const x = scale.x(bar.from);

@@ -67,7 +67,7 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
         leastGap={narrow ? 44 : 40}
         clear={narrow ? 42 : 62}
       />
-      <TwilightBand scale={scale} y={bandY} height={bandHeight} />
+      <TwilightBand night={night} scale={scale} y={bandY} height={bandHeight} />
       {lanes.map(({ lane, bars, foot }) => (
         <g key={lane.label}>
           <path d={`M${scale.left} ${foot + 0.5}H${scale.right}`} stroke="var(--hair)" />

@@ -88,10 +88,14 @@ export function formatWithError(value: number, error: number | undefined, unit: 
     const step = 10 ** place;
     return join(`${minus(String(Math.round(scaled / step) * step))}(${figure * step})`, shown);
   }
-  // Beyond what a double carries the error is no longer an error of digits.
-  if (-place > 15) return formatQuantity(value, unit, 15);
+  // Closed forms are right to the last bit; more figures than this say nothing to a reader.
+  if (scaled !== 0 && Math.floor(Math.log10(Math.abs(scaled))) - place >= mostFigures) {
+    return formatQuantity(value, unit, mostFigures);
+  }
   return join(`${minus(scaled.toFixed(-place))}(${figure})`, shown);
 }
+
+const mostFigures = 9;
 
 const counts = new Intl.NumberFormat('en', { maximumFractionDigits: 0 });
 /** 1 184, with thin spaces between thousands. */

@@ -6,16 +6,18 @@ export function formatCpu(ms: number): string {
   return `${value} ${unit}`;
 }
 
-export function cpuParts(ms: number): { value: string; unit: string } {
+const cpuUnits: [unit: string, ms: number, below: number][] = [
+  ['CPU-ms', 1, 1000],
+  ['CPU-s', 1000, 60_000],
+  ['CPU-min', 60_000, 6_000_000],
+  ['CPU-h', 3_600_000, Number.POSITIVE_INFINITY],
+];
+
+/** Number and unit apart; in a given unit where several stand together. */
+export function cpuParts(ms: number, inUnit?: string): { value: string; unit: string } {
   const size = Math.abs(ms);
-  const [divisor, unit] =
-    size < 1000 && size > 0
-      ? [1, 'CPU-ms']
-      : size < 60_000
-        ? [1000, 'CPU-s']
-        : size < 6_000_000
-          ? [60_000, 'CPU-min']
-          : [3_600_000, 'CPU-h'];
+  const fitting = ms === 0 ? cpuUnits[1] : cpuUnits.find(([, , below]) => size < below);
+  const [unit, divisor] = cpuUnits.find(([name]) => name === inUnit) ?? fitting ?? ['CPU-ms', 1];
   const value = ms / divisor;
   const text = Math.abs(value) >= 100 || divisor === 1 ? value.toFixed(0) : value.toFixed(1).replace(/\.0$/, '');
   return { value: text.replace(/^-/, '−'), unit };

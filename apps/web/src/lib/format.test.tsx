@@ -29,6 +29,9 @@ describe('quantities', () => {
     expect(formatWithError(value, error, unit).text).toBe(text);
   });
 
+  test('a closed form, right to its last bit, does not list its bits', () => {
+    expect(formatWithError(0.2196322448248183, 4e-16, 'eV').text).toBe('219.632245 meV');
+  });
   test('a number without an error claims none', () => {
     expect(formatWithError(0.1, undefined, 'eV').text).toBe('100 meV');
     expect(formatWithError(0.1, 0, 'eV').text).toBe('100 meV');

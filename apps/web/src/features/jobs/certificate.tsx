@@ -44,11 +44,17 @@ export function ChecksEntry({ model, certificate }: { model: string; certificate
     <MarginEntry title="Closed-form checks">
       {checks.length > 0 ? (
         <table className="mt-1 w-full text-small">
-          <thead className="sr-only">
-            <tr>
-              <th scope="col">Check</th>
-              <th scope="col">Computed</th>
-              <th scope="col">Expected</th>
+          <thead>
+            <tr className="border-hair border-b text-ink3">
+              <th scope="col" className="py-1 text-left font-normal">
+                holds
+              </th>
+              <th scope="col" className="py-1 pr-3 text-right font-normal">
+                computed
+              </th>
+              <th scope="col" className="py-1 text-right font-normal">
+                expected
+              </th>
             </tr>
           </thead>
           <tbody>
@@ -67,7 +73,9 @@ export function ChecksEntry({ model, certificate }: { model: string; certificate
                     </span>
                   </th>
                   <td className="num whitespace-nowrap py-[5px] pr-3 text-right">
-                    {formatQuantity(check.computed, unit).text}
+                    {check.expected === 0
+                      ? formatSmall(check.computed, unit).text
+                      : formatQuantity(check.computed, unit).text}
                   </td>
                   <td className="num whitespace-nowrap py-[5px] text-right text-ink3">
                     {formatNumber(check.expected)}

@@ -1,7 +1,7 @@
 import type { LastNight, Night, Submission } from '@nightcone/contracts';
 import { expect, test } from 'vitest';
 import { headline } from './headline.ts';
-import { workState } from './open-work.tsx';
+import { workState } from './work-state.ts';
 
 const zone = 'Europe/Berlin';
 const submission = (over: Partial<Submission>): Submission =>

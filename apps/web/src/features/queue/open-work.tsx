@@ -5,17 +5,7 @@ import { ProgressRuler } from '../../components/progress-ruler.tsx';
 import { StateMark } from '../../components/state-mark.tsx';
 import { formatCount, plural } from '../../lib/format-quantity.ts';
 import { modelWords } from '../../lib/model-words.ts';
-
-/** What the row says: a submission is active, but people ask whether it runs, waits for its turn or for the night. */
-export function workState({ state, when, progress }: Submission): string {
-  if (state !== 'active') return state;
-  if (progress.running > 0) return 'running';
-  if (progress.done > 0 && progress.done + progress.failed < progress.total) return 'running';
-  return when === 'tonight' ? 'tonight' : 'waiting';
-}
-
-const address = (row: Submission) =>
-  row.sweepId ? `/sweeps/${row.sweepId}` : row.jobHash ? `/jobs/${row.jobHash}` : undefined;
+import { addressOfWork, workState } from './work-state.ts';
 
 /** Rows that wait and belong to others say nothing that one could act on: they are gathered. */
 function gather(rows: readonly Submission[]) {
@@ -61,7 +51,7 @@ export function OpenWork({ rows }: { rows: readonly Submission[] }) {
 }
 
 function WorkRow({ row }: { row: Submission }) {
-  const to = address(row);
+  const to = addressOfWork(row);
   const name = row.mine ? row.title : `${row.owner.label}, ${modelWords(row.model)}`;
   const state = workState(row);
   return (

@@ -25,7 +25,6 @@ export function QuotaLevel({ quota, now }: { quota: Quota; now: number }) {
   // The two labels at the right keep their distance.
   const reservedLabel = Math.min(reserved + 4, used - 24);
   const grantedLabel = Math.min(y(quota.grantedMs) + 4, reservedLabel - 16);
-  const cpu = (ms: number) => cpuParts(ms);
   return (
     <div ref={ref}>
       <svg
@@ -80,18 +79,18 @@ export function QuotaLevel({ quota, now }: { quota: Quota; now: number }) {
         })}
         <g className="num">
           <text x={right + 8} y={grantedLabel} className="fill-ink2">
-            {cpu(quota.grantedMs).value} {cpu(quota.grantedMs).unit}
+            {formatCpu(quota.grantedMs)}
           </text>
           {quota.reservedMs > 0 ? (
             <text x={right + 8} y={reservedLabel} className="fill-ink">
-              {cpu(quota.usedMs + quota.reservedMs).value} with
+              {inUnitOf(quota.usedMs + quota.reservedMs, quota.grantedMs)} with
               <tspan x={right + 8} dy={13}>
                 reserved
               </tspan>
             </text>
           ) : null}
           <text x={right + 8} y={used + 4} className="fill-ink" fontWeight={700}>
-            {cpu(quota.usedMs).value} used
+            {inUnitOf(quota.usedMs, quota.grantedMs)} used
           </text>
         </g>
       </svg>
@@ -101,6 +100,12 @@ export function QuotaLevel({ quota, now }: { quota: Quota; now: number }) {
       </p>
     </div>
   );
+}
+
+/** A share of the grant in the grant's own unit, so that the labels of one drawing compare. */
+function inUnitOf(ms: number, grantedMs: number): string {
+  const { value } = cpuParts(ms, cpuParts(grantedMs).unit);
+  return ms > 0 && Number(value) === 0 ? '< 0.1' : value;
 }
 
 const remaining = (quota: Quota) => Math.max(0, quota.grantedMs - quota.usedMs - quota.reservedMs);

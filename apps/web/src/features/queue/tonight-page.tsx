@@ -12,6 +12,7 @@ import { headline } from './headline.ts';
 import { LastNightMargin, LastNightSheet } from './last-night.tsx';
 import { OpenWork } from './open-work.tsx';
 import { QuotaLevel } from './quota-level.tsx';
+import { RecentWork, recentlyEnded } from './recent-work.tsx';
 
 const FirstQuestions = lazy(() => import('./first-questions.tsx'));
 
@@ -20,15 +21,25 @@ export function Component() {
   const { group, account } = useSession();
   const { night, now } = useNight();
   const work = useApi('listSubmissions', { query: {} });
+  const ended = useApi('listSubmissions', { query: { open: 'false' } });
   const quota = useApi('getQuota');
   const lastNight = useApi('getLastNight');
   const zone = group.timeZone;
   const mayAsk = account?.role !== 'reviewer';
+  const recent = recentlyEnded(ended.data?.rows ?? [], now);
   const newcomer =
     mayAsk &&
     work.data?.rows.every((row) => !row.mine) === true &&
-    lastNight.data !== undefined &&
-    lastNight.data.rows.length === 0;
+    ended.data?.rows.length === 0 &&
+    lastNight.data?.rows.length === 0;
+  const quotaEntry = (
+    <MarginEntry level="major" title="This week’s quota">
+      <p className="mb-2 text-ink3 text-small">resets Monday 00:00</p>
+      <QueryView query={quota} what="the quota">
+        {(data) => <QuotaLevel quota={data} now={now} />}
+      </QueryView>
+    </MarginEntry>
+  );
   return (
     <Page
       wide
@@ -49,23 +60,13 @@ export function Component() {
     >
       <NightStrip />
       {newcomer ? (
-        <SheetRow>
+        <SheetRow margin={quotaEntry}>
           <Suspense>
             <FirstQuestions />
           </Suspense>
         </SheetRow>
       ) : null}
-      <SheetRow
-        divided={newcomer}
-        margin={
-          <MarginEntry level="major" title="This week’s quota">
-            <p className="mb-2 text-ink3 text-small">resets Monday 00:00</p>
-            <QueryView query={quota} what="the quota">
-              {(data) => <QuotaLevel quota={data} now={now} />}
-            </QueryView>
-          </MarginEntry>
-        }
-      >
+      <SheetRow divided={newcomer} margin={newcomer ? null : quotaEntry}>
         <section aria-labelledby="open-work">
           <h2 id="open-work" className="mb-1.5">
             Running and waiting
@@ -73,6 +74,7 @@ export function Component() {
           <QueryView query={work} what="the queue">
             {(data) => <OpenWork rows={data.rows} />}
           </QueryView>
+          {recent.length > 0 ? <RecentWork rows={recent} /> : null}
         </section>
       </SheetRow>
       <SheetRow divided margin={lastNight.data ? <LastNightMargin report={lastNight.data} /> : null}>
