@@ -15,6 +15,7 @@ import { sameOriginOnly } from './http/same-origin.ts';
 import { securityHeaders } from './http/security-headers.ts';
 import { signIn } from './http/sign-in.ts';
 import { staticWeb } from './http/static-web.ts';
+import { describeApi } from './openapi/describe-api.ts';
 import { Refusal } from './refusal.ts';
 import { routes } from './routes.ts';
 import type { Services } from './services.ts';
@@ -85,6 +86,7 @@ export function createApp(services: Services, pool: Pool): Express {
       : id === 'lookupHash'
         ? [lookupLimit]
         : [];
+  app.use(describeApi());
   app.use('/api/v1', ...knowCaller, perMinute(requests, 'requests'), sameOriginOnly(config.publicUrl));
   app.use('/api/v1', mountEndpoints(routes, services, limitsOf));
   app.use(['/api', '/auth'], () => {

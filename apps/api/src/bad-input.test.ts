@@ -169,3 +169,19 @@ test('a path that is no UTF-8 is refused politely', async () => {
   const { status, body } = await theorist.get('/api/v1/jobs/%ff');
   expect([status, body.code]).toEqual([400, 'invalid-input']);
 });
+
+test.each([
+  ['a zero byte', '{"title":"a\\u0000b","model":"landau-levels","body":1}', '/title'],
+  ['a zero byte in depth', '{"title":"a","model":"landau-levels","body":{"x":[1,"\\u0000"]}}', '/body/x/1'],
+  ['half of a surrogate pair', '{"title":"a","model":"landau-levels","body":{"x":"\\ud83d"}}', '/body/x'],
+])('%s is refused with its place', async (_, text, field) => {
+  const { status, body } = await post('/drafts', text);
+  expect([status, body.code, body.errors[0].field]).toEqual([400, 'invalid-input', field]);
+});
+test('a whole surrogate pair is a letter', async () => {
+  const text = '{"title":"a","model":"landau-levels","body":{"x":"\\ud83d\\ude00"}}';
+  expect((await post('/drafts', text).expect(201)).body.body).toEqual({ x: '\u{1f600}' });
+});
+test('a zero byte in a query is refused', async () => {
+  expect((await theorist.get('/api/v1/jobs?text=a%00b')).status).toBe(400);
+});

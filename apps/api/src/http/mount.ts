@@ -1,13 +1,14 @@
 import { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
-import { type Endpoint, limits } from '@nightcone/contracts';
-import express, { type Request, type RequestHandler, type Response, Router } from 'express';
+import type { Endpoint } from '@nightcone/contracts';
+import { type Request, type RequestHandler, type Response, Router } from 'express';
 import type { z } from 'zod';
 import type { Caller, Context, Download, Handler, Input } from '../context.ts';
 import { Refusal } from '../refusal.ts';
 import type { Services } from '../services.ts';
 import { callerOf } from './caller.ts';
 import { fieldErrors } from './problems.ts';
+import { readJson, refuseUnstorable } from './read-json.ts';
 
 /** The policy of an endpoint, before anything of the request is read. Returns the caller where there is one. */
 export function admit(endpoint: Endpoint, caller: Caller | undefined): Caller | undefined {
@@ -26,7 +27,10 @@ export function admit(endpoint: Endpoint, caller: Caller | undefined): Caller | 
 function parsePart(schema: z.ZodType | undefined, value: unknown, part: 'body' | 'query' | 'params'): unknown {
   if (!schema) return undefined;
   const parsed = schema.safeParse(value ?? {});
-  if (parsed.success) return parsed.data;
+  if (parsed.success) {
+    if (part !== 'body') refuseUnstorable(parsed.data);
+    return parsed.data;
+  }
   const errors = fieldErrors(parsed.error, value, part);
   // A path that cannot name anything is an unknown thing, not a lesson about our identifiers.
   if (part === 'params') throw new Refusal('not-found', `Nothing has this address: ${errors[0]?.message}.`);
@@ -90,8 +94,6 @@ function idempotencyKeyOf(req: Request): string | undefined {
   return key;
 }
 
-const json = express.json({ limit: limits.bodyBytes, strict: false, type: ['application/json', 'application/*+json'] });
-
 /** Mounts every endpoint of the contract: first the policy, then the body, then the handler. */
 export function mountEndpoints(
   table: readonly (readonly [Endpoint, Handler<Endpoint>])[],
@@ -104,7 +106,7 @@ export function mountEndpoints(
       admit(endpoint, callerOf(req));
       next();
     };
-    const body = endpoint.body ? [json] : [];
+    const body = endpoint.body ? readJson : [];
     router[endpoint.method](endpoint.path, guard, ...before(endpoint), ...body, answer(endpoint, handler, services));
   }
   return router;

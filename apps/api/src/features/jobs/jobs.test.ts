@@ -56,7 +56,14 @@ describe('one job', () => {
     expect(body.errors).toMatchObject([{ field: '/specification/numerics/method/size', value: 8, limit: '22' }]);
     const estimate = { title: 'Short', specification: short, axes: [] };
     const dry = await theorist.post('/api/v1/sweeps/estimate').set(sameOrigin).send(estimate).expect(200);
-    expect(dry.body.notes[0]).toMatchObject({ code: 'ladder-too-short', severity: 'refuse', points: 1, firstPoints: [0], worst: 8, limit: 22 });
+    expect(dry.body.notes[0]).toMatchObject({
+      code: 'ladder-too-short',
+      severity: 'refuse',
+      points: 1,
+      firstPoints: [0],
+      worst: 8,
+      limit: 22,
+    });
   });
   test('is submitted, and is the same for everybody', async () => {
     const { body } = await submit(theorist, { specification: specification() }).expect(201);
