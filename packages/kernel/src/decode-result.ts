@@ -23,7 +23,9 @@ export function decodeResult(model: ModelManifest, buffer: Uint8Array): KernelRe
     const dtype = dtypes[view.getUint32(at + 4, true)];
     const rank = view.getUint32(at + 8, true);
     if (!definition || !dtype) throw new KernelCrash(`Array ${i} of the result is not in the manifest.`);
-    if (dtype !== definition.dtype || rank !== definition.dims.length) {
+    // a ragged list is stored flat: its first dims are the rows of its offsets
+    const fits = definition.ragged ? rank > 0 && rank <= definition.dims.length : rank === definition.dims.length;
+    if (dtype !== definition.dtype || !fits) {
       throw new KernelCrash(`Array ${definition.name} of the result has another type or rank than the manifest says.`);
     }
     const shape: number[] = [];
