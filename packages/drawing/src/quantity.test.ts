@@ -5,6 +5,7 @@ test('the error decides the digits', () => {
   expect(formatWithError(226.4061, 0.0039)).toBe('226.406(4)');
   expect(formatWithError(1.2345, 0.012)).toBe('1.234(12)');
   expect(formatWithError(12345, 300)).toBe('12300(300)');
+  expect(formatWithError(105.6177645383102, 2e-13)).toBe('105.6177645');
   expect(formatWithError(-0.5, 0.02)).toBe('−0.50(2)');
 });
 

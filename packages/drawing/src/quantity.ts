@@ -4,6 +4,9 @@ import { displayUnit } from './axis-unit.ts';
 
 const minus = (text: string) => text.replace(/^-/, '−').replace(/e-/, 'e−').replace(/e\+/, 'e');
 
+/** Figures beyond which nobody reads on: the value is then shown to this many, without its far smaller error. */
+const mostFigures = 10;
+
 /** Fixed or scientific, whichever is shorter to read; a real minus sign; no padding with zeros. */
 export function formatNumber(value: number, digits = 4): string {
   if (!Number.isFinite(value)) return '–';
@@ -27,7 +30,8 @@ export function formatWithError(value: number, error: number | null | undefined)
   if (error === null || error === undefined || !(error > 0)) return formatNumber(value, 5);
   const [first, power] = error.toExponential(0).split('e') as [string, string];
   const places = -Number(power) + (first === '1' ? 1 : 0);
-  if (places > 14) return formatNumber(value, 15);
+  const figures = places + 1 + Math.floor(Math.log10(Math.max(Math.abs(value), error)));
+  if (figures > mostFigures) return formatNumber(value, mostFigures);
   if (places <= 0) {
     const unit = 10 ** -places;
     return minus(`${(Math.round(value / unit) * unit).toFixed(0)}(${(Math.ceil(error / unit) * unit).toFixed(0)})`);

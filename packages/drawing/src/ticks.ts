@@ -15,7 +15,9 @@ export function axisTicks(
 ): TickValue[] {
   const [from, to] = domain;
   if (!(to > from)) return [];
-  const wanted = Math.max(2, Math.floor(length / spacing));
+  let wanted = Math.max(2, Math.floor(length / spacing));
+  // two labels tell a scale, one does not
+  while (!integer && wanted < 9 && d3Ticks(from, to, wanted).length < 3) wanted++;
   let step = tickStep(from, to, wanted);
   if (integer) step = Math.max(1, Math.round(step));
   const count = (to - from) / step;

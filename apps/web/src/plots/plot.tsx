@@ -6,8 +6,9 @@ import { CrossHair } from './cross-hair.tsx';
 import { type Direction, nearestTarget, nextTarget } from './nearest-target.ts';
 import { PlotAxes } from './plot-axes.tsx';
 import { PlotCanvas } from './plot-canvas.tsx';
-import { PlotKey } from './plot-key.tsx';
+
 import { PlotMarks, PlotRules } from './plot-marks.tsx';
+import { PlotWords } from './plot-words.tsx';
 import { usePlotPointer } from './use-plot-pointer.ts';
 import { usePlotWindow } from './use-plot-window.ts';
 
@@ -30,11 +31,13 @@ export interface PlotProps {
   /** A click on a place, e.g. opens the job behind a point of a sweep. */
   onPick?: (index: number) => void;
   compact?: boolean;
+  /** False: key and caption stand elsewhere on the page. */
+  words?: boolean;
 }
 
 /** A plot with axes, marks, cross-hair, zoom, key and caption. */
 export function PlotView(props: PlotProps) {
-  const { built, height = 420, onReadout, reach = 0, remark, actions, onPick, compact = false } = props;
+  const { built, height = 420, onReadout, reach = 0, remark, actions, onPick, compact = false, words = true } = props;
   const { plot, targets } = built;
   const [box, width] = useWidth<HTMLDivElement>(640);
   const surface = useRef<HTMLDivElement | null>(null);
@@ -128,13 +131,11 @@ export function PlotView(props: PlotProps) {
         ) : null}
       </div>
       {onReadout || compact ? null : <ReadoutLine readout={readout} />}
-      {plot.key && plot.key.length > 1 && !compact ? <PlotKey entries={plot.key} /> : null}
-      <figcaption className={compact ? 'sr-only' : 'mt-1 flex flex-wrap gap-x-4 gap-y-1 text-ink2 text-small'}>
-        <span>
-          {plot.caption} {remark}
-        </span>
-        {actions}
-      </figcaption>
+      {words ? (
+        <PlotWords plot={plot} remark={remark} actions={actions} hidden={compact} />
+      ) : (
+        <figcaption className="sr-only">{plot.caption}</figcaption>
+      )}
     </figure>
   );
 }

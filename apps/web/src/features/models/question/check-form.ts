@@ -80,7 +80,8 @@ function planOf(specification: Specification, read: ReadForm, axes: readonly Swe
   }
 }
 
-const sentence = (message: string) => message.charAt(0).toUpperCase() + message.slice(1);
+/** The control stands beside the sentence, so its internal name is left out: `fieldT is 5000; …` → `It is 5000; …`. */
+const sentence = (message: string) => message.replace(/^\w+ (?=is |has )/, 'It ');
 
 /** Name of the control at a JSON Pointer of the specification, following the chosen kinds. */
 export function controlOf(model: FormModel, texts: FormTexts, pointer: string): string {

@@ -12,6 +12,7 @@ export function ControlRow({
   labelId,
   error,
   errorId,
+  inline = false,
   children,
 }: {
   name: string;
@@ -20,6 +21,8 @@ export function ControlRow({
   labelId?: string;
   error?: string;
   errorId?: string;
+  /** Narrow enough to stand beside its name on a phone too. */
+  inline?: boolean;
   children: ReactNode;
 }) {
   const { notes } = useQuestionForm();
@@ -37,7 +40,7 @@ export function ControlRow({
   );
   return (
     <div
-      className="grid grid-cols-[1.6rem_minmax(0,1fr)] gap-x-1 py-1 sm:grid-cols-[1.6rem_7.4rem_minmax(0,1fr)]"
+      className={`grid gap-x-1 py-1 sm:grid-cols-[1.6rem_7.4rem_minmax(0,1fr)] ${inline ? 'grid-cols-[1.6rem_6.4rem_minmax(0,1fr)] max-[359px]:grid-cols-[1.6rem_minmax(0,1fr)]' : 'grid-cols-[1.6rem_minmax(0,1fr)]'}`}
       title={field.display?.help}
     >
       <span aria-hidden="true" className="pt-[3px]">
@@ -52,9 +55,13 @@ export function ControlRow({
           {words}
         </span>
       )}
-      <div className="min-w-0 max-sm:col-span-2">
+      <div className={`min-w-0 ${inline ? 'max-[359px]:col-span-2' : 'max-sm:col-span-2'}`}>
         {children}
-        {error ? <FieldError {...(errorId ? { id: errorId } : {})}>{error}</FieldError> : null}
+        {error ? (
+          <div className="pt-1.5">
+            <FieldError {...(errorId ? { id: errorId } : {})}>{error}</FieldError>
+          </div>
+        ) : null}
         <FoldedNotes notes={own} />
       </div>
     </div>

@@ -30,9 +30,9 @@ export function FormGroups() {
             aria-labelledby={`group-${id}`}
             className="border-hair border-b py-2 last:border-b-0 sm:grid sm:grid-cols-[5.4rem_minmax(0,1fr)]"
           >
-            <h3 id={`group-${id}`} className="pt-[3px]">
+            <h2 id={`group-${id}`} className="pt-[3px] font-medium text-h3 italic">
               {title}
-            </h3>
+            </h2>
             <div className="min-w-0">
               {fields.map(({ part, field }) => (
                 <FieldControl

@@ -10,7 +10,9 @@ export function OtherAxes() {
   if (axes.length === 0) return null;
   return (
     <section aria-labelledby="other-axes" className="border-hair border-b py-2">
-      <h3 id="other-axes">Also varies</h3>
+      <h2 id="other-axes" className="font-medium text-h3 italic">
+        Also varies
+      </h2>
       <ul className="text-small">
         {axes.map((axis) => (
           <li key={axis.pointers.join(' ')} className="flex items-baseline justify-between gap-4 py-1">

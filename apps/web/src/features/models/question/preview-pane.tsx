@@ -1,11 +1,23 @@
 import type { ModelDefinition } from '@nightcone/models';
-import { useMemo, useState } from 'react';
+import { useMemo, useState, useSyncExternalStore } from 'react';
 import type { BuiltPlot } from '../../../plots/built-plot.ts';
 import { PlotView } from '../../../plots/plot.tsx';
 import { PlotActions } from '../../../plots/plot-actions.tsx';
+import { PlotWords } from '../../../plots/plot-words.tsx';
 import { Segmented } from '../../../plots/segmented.tsx';
 import { viewsOf } from '../../../plots/views.ts';
 import type { Preview } from '../preview/use-preview.ts';
+
+const narrowQuery = '(max-width: 48rem)';
+const useNarrow = () =>
+  useSyncExternalStore(
+    (listen) => {
+      const query = matchMedia(narrowQuery);
+      query.addEventListener('change', listen);
+      return () => query.removeEventListener('change', listen);
+    },
+    () => matchMedia(narrowQuery).matches,
+  );
 
 /** The drawing of a reduced copy; the last good one stays, paler, while a newer one is computed or has a fault. */
 export function PreviewPane({
@@ -26,10 +38,12 @@ export function PreviewPane({
   const [chosen, setChosen] = useState<string | null>(null);
   const view = views.find(({ id }) => id === chosen) ?? views[0];
   const built = useMemo<BuiltPlot | null>(() => (result && view ? view.build(result.data) : null), [result, view]);
+  const narrow = useNarrow();
+  const height = narrow ? 270 : 400;
   const left = result && result.stated.length > 0 ? result.stated.join(', ') : 'the whole question';
   const said = message ?? (incomplete ? 'The form is not complete; this is the last complete question.' : '');
   return (
-    <section aria-label="Preview" aria-busy={busy}>
+    <section aria-label="Preview" aria-busy={busy} className="@max-4xl:contents">
       {views.length > 1 && view ? (
         <div className="mb-1 max-w-md">
           <Segmented
@@ -42,11 +56,15 @@ export function PreviewPane({
         </div>
       ) : null}
       {built && view ? (
-        <div className={incomplete ? 'opacity-60' : ''}>
-          <PlotView
-            key={view.id}
-            built={built}
-            height={400}
+        <>
+          {/* on a narrow page the drawing stays in view while one types; its words scroll away */}
+          <div
+            className={`@max-4xl:z-10 bg-ground @max-4xl:[@media(min-height:640px)]:sticky @max-4xl:top-0 ${incomplete ? 'text-ink3' : ''}`}
+          >
+            <PlotView key={view.id} built={built} height={height} words={false} />
+          </div>
+          <PlotWords
+            plot={built.plot}
             remark={
               <>
                 {place ? `At ${place}. ` : ''}Preview: {left}, {Math.max(1, Math.round(result?.ms ?? 0))} ms; no error
@@ -55,7 +73,7 @@ export function PreviewPane({
             }
             actions={<PlotActions built={built} name={`preview-${model.id}-${view.id}`} metadata={{ preview: left }} />}
           />
-        </div>
+        </>
       ) : (
         <div className="grid min-h-[26rem] place-items-center border border-hair border-dashed p-6 text-center text-ink2">
           <p>{message ?? (busy ? 'The program is drawing …' : 'The preview appears here.')}</p>

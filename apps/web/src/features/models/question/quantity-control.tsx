@@ -36,9 +36,12 @@ export function QuantityControl({ name, field, value }: { name: string; field: F
     const single = swept ? String(value ?? swept.values[0] ?? '') : String(field.default ?? '');
     setText(name, looksSwept ? single : suggestRange(text, field));
   };
+  // a unit of one's own, or a long text, takes the place of the unit
+  const showUnit =
+    unit !== '' && !/[a-zµ°Å]{1,}\s*(\/|$)/i.test(text.replace(/[\d.]e[+-]?\d/gi, '0')) && text.length < 18;
   const described = [error ? `${id}-error` : '', derived ? `${id}-derived` : ''].filter(Boolean).join(' ');
   return (
-    <ControlRow name={name} field={field} htmlFor={id} errorId={`${id}-error`} {...(error ? { error } : {})}>
+    <ControlRow inline name={name} field={field} htmlFor={id} errorId={`${id}-error`} {...(error ? { error } : {})}>
       <div className="flex items-center gap-2.5">
         <div className="relative min-w-0 flex-auto">
           <input
@@ -50,11 +53,11 @@ export function QuantityControl({ name, field, value }: { name: string; field: F
             aria-invalid={error ? true : undefined}
             aria-describedby={described || undefined}
             className={`num ${inputLook}`}
-            style={unit ? { paddingRight: `${unit.length * 0.62 + 1.1}em` } : undefined}
+            style={showUnit ? { paddingRight: `${unit.length * 0.62 + 1.1}em` } : undefined}
             onKeyDown={onKeyDown}
             onFocus={() => showHelp(field.display ? { title: field.display.title, help: helpOf(field) } : null)}
           />
-          {unit ? (
+          {showUnit ? (
             <span
               aria-hidden="true"
               className="num pointer-events-none absolute inset-y-0 right-2 flex items-center text-ink3"

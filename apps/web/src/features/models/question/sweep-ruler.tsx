@@ -51,12 +51,12 @@ export function SweepRuler({ control }: { control: SweptControl }) {
         />
       </div>
       <p className="flex justify-between gap-3 text-ink2 text-least">
-        <span className="num">{text(values[0])}</span>
+        <span className="num whitespace-nowrap">{text(values[0])}</span>
         <span className="text-center">
           {values.length} values{step ? `, step ${text(Number(step.toPrecision(6)))}` : ''}; previewing{' '}
           {text(values[at])}
         </span>
-        <span className="num">{text(values[last])}</span>
+        <span className="num whitespace-nowrap">{text(values[last])}</span>
       </p>
       {partners.length > 0 ? (
         <label className="flex items-center gap-2 text-ink2 text-least">
