@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
-import { type Db, type PlannedJob, type Submitter, storeKernel, submitSweep } from '@nightcone/db';
+import { type Db, type PlannedJob, type Submitter, storeKernel } from '@nightcone/db';
 import { type FakeParameters, fakeKernelBytes, fakeManifest } from '../threads/testing/fake-kernel.ts';
+import { submitPlanned } from './planned-sweep.ts';
 
 const sha256 = (data: string | Uint8Array) => createHash('sha256').update(data).digest('hex');
 export const fakeKernelDigest = sha256(fakeKernelBytes);
@@ -20,7 +21,7 @@ export function storeFakeKernel(db: Db): Promise<void> {
 let made = 0;
 
 /** A sweep of jobs for the fake slice thread, all different. The id of its submission. */
-export async function submitFakeSweep(
+export function submitFakeSweep(
   db: Db,
   submitter: Submitter,
   jobs: FakeParameters[],
@@ -48,16 +49,5 @@ export async function submitFakeSweep(
       memoryBytes: 1_000_000,
     };
   });
-  const { submissionId } = await submitSweep(db, submitter, null, {
-    title: 'fake sweep',
-    model: 'fake',
-    tonight: false,
-    definition: {
-      specification: {},
-      axes: [{ pointers: ['/numerics/number'], values: planned.map((_, place) => [place]) }],
-    },
-    jobs: planned,
-    points: planned.map(({ hash }, place) => ({ jobHash: hash, place, values: [place] })),
-  });
-  return submissionId;
+  return submitPlanned(db, submitter, planned);
 }
