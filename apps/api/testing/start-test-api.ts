@@ -2,7 +2,7 @@
 
 import { createServer } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { adjustQuota, type Db, findQuota, saveSettings } from '@nightcone/db';
+import { type AuditRow, adjustQuota, type Db, findQuota, listAuditEntries, saveSettings } from '@nightcone/db';
 import { createTestDatabase } from '@nightcone/db/testing';
 import { pino } from 'pino';
 import request from 'supertest';
@@ -27,6 +27,8 @@ export interface TestApi {
   as: (login: Login) => Promise<Agent>;
   /** Grants or takes so that this many milliseconds are free this week. */
   setFreeQuota: (login: Login, ms: number) => Promise<void>;
+  /** What the audit says of something, the oldest first. */
+  listAudit: (subjectId: string) => Promise<AuditRow[]>;
   stop: () => Promise<void>;
 }
 
@@ -106,7 +108,17 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
     await provider.close();
     await database.drop();
   };
-  return { url, provider, db, databaseUrl: database.url, anonymous, as, setFreeQuota, stop };
+  return {
+    url,
+    provider,
+    db,
+    databaseUrl: database.url,
+    anonymous,
+    as,
+    setFreeQuota,
+    listAudit: (id) => listAuditEntries(db, id),
+    stop,
+  };
 }
 
 const nobody = { accountId: null, requestId: null };

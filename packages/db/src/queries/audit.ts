@@ -1,3 +1,4 @@
+import { asc, eq } from 'drizzle-orm';
 import type { Queryable } from '../client.ts';
 import { auditEntries } from '../schema/audit.ts';
 
@@ -19,4 +20,11 @@ export interface AuditEntry {
 /** Appends an entry; call it in the transaction of the change. */
 export async function saveAuditEntry(db: Queryable, actor: Actor, entry: AuditEntry): Promise<void> {
   await db.insert(auditEntries).values({ actorId: actor.accountId, requestId: actor.requestId, ...entry });
+}
+
+export type AuditRow = typeof auditEntries.$inferSelect;
+
+/** Everything that was done to one thing, the oldest first. */
+export async function listAuditEntries(db: Queryable, subjectId: string): Promise<AuditRow[]> {
+  return db.select().from(auditEntries).where(eq(auditEntries.subjectId, subjectId)).orderBy(asc(auditEntries.id));
 }
