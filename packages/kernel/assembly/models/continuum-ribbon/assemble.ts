@@ -18,7 +18,7 @@ import {
   LEVEL_VELOCITY, ROW_CUT, ROW_FOUND, ROW_HIGH, ROW_LOW, ROW_RESIDUAL, ROW_WANTED, rowLevels,
 } from "./row";
 
-const ARRAYS: i32 = 29;
+const ARRAYS: i32 = 30;
 
 @inline
 function putByte(p: usize, i: i32, value: i32): void {
@@ -49,50 +49,96 @@ function writeAxes(): void {
   memory.copy(k, kAxis.values, <usize>kAxis.count << 3);
   const valley = addArray(1, I32, 1, valleyCount);
   for (let v = 0; v < valleyCount; v++) putInteger(valley, v, valleyCode(v));
-  const spin = addArray(2, I32, 1, spinCount);
-  for (let s = 0; s < spinCount; s++) putInteger(spin, s, spinCode(s));
-  put(addArray(3, F64, 1, 1), 0, widthNm);
-  const energy = addArray(4, F64, 1, energyAxis.count);
+  put(addArray(2, F64, 0, 1), 0, widthNm);
+  const energy = addArray(3, F64, 1, energyAxis.count);
   memory.copy(energy, energyAxis.values, <usize>energyAxis.count << 3);
 }
 
+// the spins of one valley and wave number, merged by energy: which spin and which level comes next
+let nextSpin: i32 = 0;
+let nextLevel: i32 = 0;
+let taken0: i32 = 0;
+let taken1: i32 = 0;
+
+function beginMerge(): void {
+  taken0 = 0;
+  taken1 = 0;
+}
+
+/** Advances to the next level of (v, k) in ascending energy; false at the end. */
+function mergeNext(v: i32, k: i32): bool {
+  const row0 = rowAt(v * spinCount, k);
+  const has0 = taken0 < rowLevels(row0);
+  let has1 = false;
+  let first = has0;
+  if (spinCount == 2) {
+    const row1 = rowAt(v * spinCount + 1, k);
+    has1 = taken1 < rowLevels(row1);
+    if (has0 && has1) first = at(levelAt(row0, taken0), LEVEL_ENERGY) <= at(levelAt(row1, taken1), LEVEL_ENERGY);
+  }
+  if (!has0 && !has1) return false;
+  nextSpin = first ? 0 : 1;
+  nextLevel = first ? taken0++ : taken1++;
+  return true;
+}
+
 function writeLevels(): void {
-  const rows = valleyCount * spinCount * kAxis.count;
-  const offsets = addArray(5, I32, 1, rows + 1);
-  const energies = addArray(6, F64, 1, totalLevels);
-  const velocities = addArray(7, F64, 1, totalLevels);
-  const errors = addArray(8, F64, 1, totalLevels);
-  const errorsValid = addArray(9, U8, 1, totalLevels);
-  const shares = addArray(10, F64, 1, totalLevels);
-  const cluster = addArray(11, I32, 1, totalLevels);
-  const index = addArray(12, I32, 1, totalLevels);
-  const cut = addArray(13, U8, 3, valleyCount, spinCount, kAxis.count);
-  const proved = addArray(14, F64, 4, valleyCount, spinCount, kAxis.count, 2);
+  const rows = valleyCount * kAxis.count;
+  const offsets = addArray(4, I32, 1, rows + 1);
+  const energies = addArray(5, F64, 1, totalLevels);
+  const velocities = addArray(6, F64, 1, totalLevels);
+  const errors = addArray(7, F64, 1, totalLevels);
+  const errorsValid = addArray(8, U8, 1, totalLevels);
+  const shares = addArray(9, F64, 1, totalLevels);
+  const cluster = addArray(10, I32, 1, totalLevels);
+  const index = addArray(11, I32, 1, totalLevels);
+  const spin = addArray(12, I32, 1, totalLevels);
+  const cut = addArray(13, U8, 2, valleyCount, kAxis.count);
+  const proved = addArray(14, F64, 3, valleyCount, kAxis.count, 2);
   let to = 0;
   for (let row = 0; row < rows; row++) {
-    const from = rowAt(row / kAxis.count, row % kAxis.count);
-    const first = to;
-    for (let i = 0, n = rowLevels(from); i < n; i++, to++) {
-      const level = levelAt(from, i);
+    const v = row / kAxis.count;
+    const k = row % kAxis.count;
+    // per spin: the cluster being written and where it began
+    let open0 = -1, open1 = -1, start0 = 0, start1 = 0;
+    beginMerge();
+    for (; mergeNext(v, k); to++) {
+      const level = levelAt(rowAt(v * spinCount + nextSpin, k), nextLevel);
+      const own = <i32>at(level, LEVEL_CLUSTER);
+      if (nextSpin == 0 && own != open0) { open0 = own; start0 = to; }
+      if (nextSpin == 1 && own != open1) { open1 = own; start1 = to; }
       put(energies, to, at(level, LEVEL_ENERGY));
       put(velocities, to, at(level, LEVEL_VELOCITY));
       put(errors, to, at(level, LEVEL_ERROR));
       putByte(errorsValid, to, at(level, LEVEL_ESTIMATE) != 0 ? 1 : 0);
       put(shares, to, at(level, LEVEL_SHARE));
-      putInteger(cluster, to, first + <i32>at(level, LEVEL_CLUSTER));
+      putInteger(cluster, to, nextSpin == 0 ? start0 : start1);
       putInteger(index, to, <i32>at(level, LEVEL_INDEX));
+      putInteger(spin, to, spinCode(nextSpin));
     }
     putInteger(offsets, row + 1, to);
-    putByte(cut, row, <i32>at(from, ROW_CUT));
-    put(proved, 2 * row, at(from, ROW_LOW));
-    put(proved, 2 * row + 1, at(from, ROW_HIGH));
+    writeRange(row, v, k, cut, proved);
   }
+}
+
+/** Where the merged list is complete: the ranges of both spins overlap there. */
+function writeRange(row: i32, v: i32, k: i32, cut: usize, proved: usize): void {
+  let low = -Infinity, high = Infinity, incomplete = 0;
+  for (let s = 0; s < spinCount; s++) {
+    const from = rowAt(v * spinCount + s, k);
+    low = Math.max(low, at(from, ROW_LOW));
+    high = Math.min(high, at(from, ROW_HIGH));
+    incomplete = max(incomplete, <i32>at(from, ROW_CUT));
+  }
+  putByte(cut, row, incomplete);
+  put(proved, 2 * row, low);
+  put(proved, 2 * row + 1, high);
 }
 
 function writeGap(): void {
   findGap();
-  put(addArray(15, F64, 1, 1), 0, gapValid ? gapEv : 0);
-  put(addArray(16, F64, 1, 1), 0, gapValid ? gapErrorEv : 0);
+  put(addArray(15, F64, 0, 1), 0, gapValid ? gapEv : 0);
+  put(addArray(16, F64, 0, 1), 0, gapValid ? gapErrorEv : 0);
   const k = addArray(17, F64, 1, 2);
   const edges = addArray(18, F64, 1, 2);
   if (gapValid) {
@@ -101,42 +147,47 @@ function writeGap(): void {
     put(edges, 0, valenceEv);
     put(edges, 1, conductionEv);
   }
-  putByte(addArray(19, U8, 1, 1), 0, gapValid && gapIsDirect ? 1 : 0);
-  putByte(addArray(20, U8, 1, 1), 0, gapValid ? 1 : 0);
-  putByte(addArray(21, U8, 1, 1), 0, gapValid && gapAtEnd ? 1 : 0);
+  putByte(addArray(19, U8, 0, 1), 0, gapValid && gapIsDirect ? 1 : 0);
+  putByte(addArray(20, U8, 0, 1), 0, gapValid ? 1 : 0);
+  putByte(addArray(21, U8, 0, 1), 0, gapValid && gapAtEnd ? 1 : 0);
 }
 
-/** Densities at the asked wave numbers: rows in the order valley, spin, state, level. */
+/** Densities at the asked wave numbers: rows in the order valley, state, level. */
 function writeDensities(): void {
   const room = mark();
   const grid: Grid = makeGrid(cells << (gridCount - 1), 1, 0);
   const points = stateCount > 0 ? positionCount(grid) : 0;
-  const series = valleyCount * spinCount;
-  let rows = 0;
-  for (let s = 0; s < series; s++) for (let i = 0; i < stateCount; i++) rows += rowLevels(rowAt(s, <i32>at(states, i)));
   const offset = positionAt(grid, 0);
   const step = 0.5 * grid.h;
   release(room);
-  const offsets = addArray(24, I32, 1, series * stateCount + 1);
+  let rows = 0;
+  for (let s = 0; s < valleyCount * spinCount; s++) {
+    for (let i = 0; i < stateCount; i++) rows += rowLevels(rowAt(s, <i32>at(states, i)));
+  }
+  const offsets = addArray(24, I32, 1, valleyCount * stateCount + 1);
   const position = addArray(25, F64, 1, points);
   for (let i = 0; i < points; i++) put(position, i, offset + <f64>i * step);
   const a = addArray(26, F64, 2, rows, points);
   const b = addArray(27, F64, 2, rows, points);
+  const kIndex = addArray(28, I32, 1, rows);
+  const energy = addArray(29, F64, 1, rows);
   const bytes = <usize>points << 3;
   let to = 0;
-  for (let s = 0; s < series; s++) {
+  for (let v = 0; v < valleyCount; v++) {
     for (let i = 0; i < stateCount; i++) {
-      const row = rowAt(s, <i32>at(states, i));
-      for (let l = 0, n = rowLevels(row); l < n; l++, to++) {
-        const density = densityOf(row, l);
+      const k = <i32>at(states, i);
+      beginMerge();
+      for (; mergeNext(v, k); to++) {
+        const row = rowAt(v * spinCount + nextSpin, k);
+        const density = densityOf(row, nextLevel);
         memory.copy(a + <usize>to * bytes, density, bytes);
         memory.copy(b + <usize>to * bytes, density + bytes, bytes);
+        putInteger(kIndex, to, k);
+        put(energy, to, at(levelAt(row, nextLevel), LEVEL_ENERGY));
       }
-      putInteger(offsets, s * stateCount + i + 1, to);
+      putInteger(offsets, v * stateCount + i + 1, to);
     }
   }
-  const k = addArray(28, I32, 1, stateCount);
-  for (let i = 0; i < stateCount; i++) putInteger(k, i, <i32>at(states, i));
 }
 
 function writeCertificate(worst: usize): void {

@@ -1,0 +1,267 @@
+import type { CheckDefinition, ResultArray } from '../../definition.ts';
+
+/** Arrays in the order of their index in the kernel (assembly/models/continuum-ribbon/assemble.ts): append only. */
+export const results: ResultArray[] = [
+  {
+    name: 'kPerNm',
+    dtype: 'f64',
+    dims: ['k'],
+    unit: '1/nm',
+    display: { title: 'wave number along the strip', symbol: 'k' },
+  },
+  {
+    name: 'valley',
+    dtype: 'i32',
+    dims: ['valley'],
+    unit: '',
+    display: { title: 'valley', symbol: '\\tau', help: '+1: K; −1: K′; 0: both at once, mixed by an armchair edge.' },
+  },
+  { name: 'widthNm', dtype: 'f64', dims: [], unit: 'nm', display: { title: 'width', symbol: 'W' } },
+  {
+    name: 'energyEv',
+    dtype: 'f64',
+    dims: ['energy'],
+    unit: 'eV',
+    display: { title: 'energies of the channels', symbol: 'E' },
+  },
+  {
+    name: 'offsets',
+    dtype: 'i32',
+    dims: ['row'],
+    unit: '',
+    display: {
+      title: 'first level of each row',
+      help: 'Row valley·(number of k) + k holds the levels offsets[row] … offsets[row + 1] − 1, both spins in one list.',
+    },
+  },
+  {
+    name: 'energies',
+    dtype: 'f64',
+    dims: ['valley', 'k', 'level'],
+    unit: 'eV',
+    ragged: 'offsets',
+    display: { title: 'energy', symbol: 'E' },
+  },
+  {
+    name: 'velocities',
+    dtype: 'f64',
+    dims: ['valley', 'k', 'level'],
+    unit: 'eV nm',
+    ragged: 'offsets',
+    display: {
+      title: 'slope dE/dk',
+      symbol: '\\partial E/\\partial k',
+      help: 'Hellmann–Feynman; ascending within a cluster.',
+    },
+  },
+  {
+    name: 'errorEstimate',
+    dtype: 'f64',
+    dims: ['valley', 'k', 'level'],
+    unit: 'eV',
+    ragged: 'offsets',
+    display: { title: 'error estimate', symbol: '\\delta E' },
+  },
+  {
+    name: 'errorEstimateValid',
+    dtype: 'u8',
+    dims: ['valley', 'k', 'level'],
+    unit: '',
+    ragged: 'offsets',
+    display: { title: 'has an error estimate', help: '0 with a single grid.' },
+  },
+  {
+    name: 'valleyWeight',
+    dtype: 'f64',
+    dims: ['valley', 'k', 'level'],
+    unit: '',
+    ragged: 'offsets',
+    display: { title: 'share of valley K', symbol: 'w_K', help: 'Averaged over a cluster.' },
+  },
+  {
+    name: 'cluster',
+    dtype: 'i32',
+    dims: ['valley', 'k', 'level'],
+    unit: '',
+    ragged: 'offsets',
+    display: { title: 'cluster', help: 'Position of the first level of the cluster.' },
+  },
+  {
+    name: 'levelIndex',
+    dtype: 'i32',
+    dims: ['valley', 'k', 'level'],
+    unit: '',
+    ragged: 'offsets',
+    display: { title: 'level number', symbol: 'n', help: '0 is the lowest above half filling, −1 the highest below.' },
+  },
+  {
+    name: 'levelSpin',
+    dtype: 'i32',
+    dims: ['valley', 'k', 'level'],
+    unit: '',
+    ragged: 'offsets',
+    display: { title: 'spin', symbol: 's', help: '0: spins are counted, not split; −1 and +1: split by the field.' },
+  },
+  {
+    name: 'cutMultiplet',
+    dtype: 'u8',
+    dims: ['valley', 'k'],
+    unit: '',
+    display: { title: 'last multiplet is incomplete' },
+  },
+  {
+    name: 'provedRangeEv',
+    dtype: 'f64',
+    dims: ['valley', 'k', 'end'],
+    unit: 'eV',
+    display: { title: 'range in which the list is complete', help: 'A window edge that touches a level is moved out.' },
+  },
+  { name: 'gapEv', dtype: 'f64', dims: [], unit: 'eV', display: { title: 'gap', symbol: 'E_g' } },
+  {
+    name: 'gapErrorEv',
+    dtype: 'f64',
+    dims: [],
+    unit: 'eV',
+    display: { title: 'error of the gap', symbol: '\\delta E_g' },
+  },
+  {
+    name: 'gapKPerNm',
+    dtype: 'f64',
+    dims: ['edge'],
+    unit: '1/nm',
+    display: { title: 'wave number of the band edges', help: 'Of the valence maximum, then the conduction minimum.' },
+  },
+  {
+    name: 'bandEdgesEv',
+    dtype: 'f64',
+    dims: ['edge'],
+    unit: 'eV',
+    display: {
+      title: 'band edges',
+      help: 'Valence maximum, conduction minimum; a negative gap means that they overlap.',
+    },
+  },
+  { name: 'gapIsDirect', dtype: 'u8', dims: [], unit: '', display: { title: 'gap is direct' } },
+  { name: 'gapValid', dtype: 'u8', dims: [], unit: '', display: { title: 'gap was found' } },
+  {
+    name: 'gapAtAxisEnd',
+    dtype: 'u8',
+    dims: [],
+    unit: '',
+    display: { title: 'a band edge lies at an end of the axis', help: 'Then the true gap may lie beyond it.' },
+  },
+  {
+    name: 'channels',
+    dtype: 'f64',
+    dims: ['energy'],
+    unit: '',
+    display: { title: 'open channels', symbol: 'M', help: 'Right-moving modes, spin counted; thermal mean for T > 0.' },
+  },
+  { name: 'channelsValid', dtype: 'u8', dims: ['energy'], unit: '', display: { title: 'channels are proved' } },
+  {
+    name: 'densityOffsets',
+    dtype: 'i32',
+    dims: ['row'],
+    unit: '',
+    display: {
+      title: 'first density of each state',
+      help: 'Row valley·(number of states) + state, as for the levels.',
+    },
+  },
+  {
+    name: 'positionNm',
+    dtype: 'f64',
+    dims: ['position'],
+    unit: 'nm',
+    display: { title: 'position from the centre', symbol: 'u' },
+  },
+  {
+    name: 'densityA',
+    dtype: 'f64',
+    dims: ['valley', 'state', 'level', 'position'],
+    unit: '1/nm',
+    ragged: 'densityOffsets',
+    display: { title: 'density on A', symbol: '|\\phi_A|^2' },
+  },
+  {
+    name: 'densityB',
+    dtype: 'f64',
+    dims: ['valley', 'state', 'level', 'position'],
+    unit: '1/nm',
+    ragged: 'densityOffsets',
+    display: { title: 'density on B', symbol: '|\\phi_B|^2' },
+  },
+  {
+    name: 'densityKIndex',
+    dtype: 'i32',
+    dims: ['valley', 'state', 'level'],
+    unit: '',
+    ragged: 'densityOffsets',
+    display: { title: 'index of the state on the k axis' },
+  },
+  {
+    name: 'densityEnergyEv',
+    dtype: 'f64',
+    dims: ['valley', 'state', 'level'],
+    unit: 'eV',
+    ragged: 'densityOffsets',
+    display: { title: 'energy of the state', symbol: 'E' },
+  },
+];
+
+export const certificate = [
+  { name: 'largestResidualEv', unit: 'eV' },
+  { name: 'largestProofHalfWidthEv', unit: 'eV' },
+  { name: 'inertiaWanted', unit: '' },
+  { name: 'inertiaFound', unit: '' },
+  { name: 'largestErrorEstimateEv', unit: 'eV' },
+  { name: 'levelsNotExtrapolated', unit: '' },
+  { name: 'cutMultiplets', unit: '' },
+];
+
+/** Codes in the kernel's order (assembly/models/continuum-ribbon/checks.ts): append only. */
+export const checks: CheckDefinition[] = [
+  {
+    code: 'transcendental-quantisation',
+    unit: 'eV',
+    display: {
+      title: 'Quantised wave number of the uniform ribbon',
+      source:
+        'L. Brey, H. A. Fertig, PRB 73, 235411 (2006); M. V. Berry, R. J. Mondragon, Proc. R. Soc. A 412, 53 (1987)',
+    },
+  },
+  {
+    code: 'landau-ladder',
+    unit: 'eV',
+    display: {
+      title: 'Landau ladder in the middle of a wide ribbon',
+      source: 'J. W. McClure, Phys. Rev. 104, 666 (1956)',
+    },
+  },
+  {
+    code: 'transfer-trace',
+    unit: '',
+    display: {
+      title: 'Trace of the transfer matrix around the unfolded ring',
+      source: "Hill's condition, common practice",
+    },
+  },
+  {
+    code: 'plus-minus-symmetry',
+    unit: 'eV',
+    display: { title: 'Levels come in pairs ±E', source: 'chiral symmetry, common practice' },
+  },
+  {
+    code: 'periodic-closed-form',
+    unit: 'eV',
+    display: { title: 'Plane waves of the periodic strip', source: 'Bloch, common practice' },
+  },
+  {
+    code: 'chiral-mode',
+    unit: 'eV',
+    display: {
+      title: 'One-way mode of a mass domain, E = ±ħvk',
+      source: 'M. V. Berry, R. J. Mondragon, Proc. R. Soc. A 412, 53 (1987)',
+    },
+  },
+];
