@@ -69,7 +69,7 @@ $$;
 -- priority. Inside the night window *tonight* goes before *now*, except on express slots.
 CREATE FUNCTION queue.next_turn(express boolean, memory bigint, moment timestamptz DEFAULT now())
 RETURNS TABLE (submission_id uuid, account_id uuid, person_tag float8, own_tag float8) STABLE LANGUAGE sql AS $$
-  WITH circumstances AS (
+  WITH circumstances AS MATERIALIZED (  -- once, not once for every submission
     SELECT s.max_slots, queue.is_night(moment) AS night, (SELECT c.virtual_time FROM turn_clock c) AS clock FROM queue.settings() s),
   startable AS (
     SELECT s.id, s.account_id, s.priority, s.created_at, greatest(s.virtual_time, t.clock) AS own_tag,

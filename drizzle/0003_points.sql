@@ -38,6 +38,12 @@ BEGIN
     AND NOT EXISTS (SELECT FROM executions e WHERE e.job_hash = j.hash AND e.state = 'running' AND e.started_at IS NOT NULL);
 END $$;
 
+-- the payloads of points that need them no more
+CREATE FUNCTION queue.drop_payloads(submission uuid, parts_per_job int, points int[]) RETURNS void LANGUAGE sql AS $$
+  DELETE FROM part_rows r USING unnest(points) p
+  WHERE r.submission_id = submission AND r.index >= p * (parts_per_job + 1) AND r.index < (p + 1) * (parts_per_job + 1)
+$$;
+
 -- points end: their outcome is set once, what is left of them leaves the backlog. Returns the slices nobody will compute
 CREATE FUNCTION queue.conclude(submission uuid, concluded int[], result text) RETURNS bigint LANGUAGE plpgsql AS $$
 DECLARE
@@ -59,6 +65,8 @@ BEGIN
       WHERE submission_id = submission AND point = ANY (ended) AND state = 'running' RETURNING job_hash)
     SELECT array_agg(job_hash) INTO stopped FROM e;
   IF stopped IS NOT NULL THEN PERFORM queue.rest_jobs(stopped); END IF;
+  -- broken-off points keep the payloads of their other parts, for a retry by hand
+  IF s.parts_per_job > 1 AND result <> 'broken-off' THEN PERFORM queue.drop_payloads(submission, s.parts_per_job, ended); END IF;
   SELECT sum(j.slices - coalesce(r.computed, 0)) INTO dropped
     FROM submission_points sp JOIN jobs j ON j.hash = sp.job_hash,
       LATERAL (SELECT sum(queue.slices_of(p.index, s.parts_per_job, j.slices)) AS computed FROM parts p
@@ -132,6 +140,15 @@ BEGIN
     JOIN jobs j ON j.hash = sp.job_hash
     WHERE j.state <> 'waiting';
   IF finished IS NULL AND failed IS NULL AND parked IS NULL THEN RETURN batch; END IF;
+  IF finished IS NOT NULL OR failed IS NOT NULL THEN
+    -- where some are known, more may be: take them out in one go
+    SELECT array_agg(p.point) FILTER (WHERE j.state IN ('finished', 'disputed')), array_agg(p.point) FILTER (WHERE j.state = 'failed')
+      INTO finished, failed
+      FROM (SELECT DISTINCT i / queue.width(s.parts_per_job) AS point FROM queue.numbers(queue.take(s.todo, 5000)) i) p
+      JOIN submission_points sp ON sp.submission_id = submission AND sp.point = p.point
+      JOIN jobs j ON j.hash = sp.job_hash
+      WHERE j.state IN ('finished', 'disputed', 'failed');
+  END IF;
   PERFORM queue.settle(submission, NULL, 0, queue.conclude(submission, finished, 'reused') + queue.conclude(submission, failed, 'failed'), 'computed by another submission');
   -- only what waits can be parked; parts of the same job that are running in this submission go on
   aside := queue.parts_of(parked, s.parts_per_job) * s.todo;

@@ -25,6 +25,10 @@ BEGIN
       VALUES ('jobs.dispute', 'job', r.hash, jsonb_build_object('resultDigest', r.result_digest),
         jsonb_build_object('resultDigest', r.digest, 'failure', r.code, 'execution', r.execution_id));
   END LOOP;
+  -- a failure is final: a result after it changes nothing, but somebody must look
+  INSERT INTO audit_entries (action, subject, subject_id, before, after)
+    SELECT 'jobs.dispute', 'job', j.hash, jsonb_build_object('failure', j.failure_code), jsonb_build_object('resultDigest', t.digest, 'execution', t.execution_id)
+    FROM unnest(ended) t JOIN jobs j ON j.hash = t.job_hash WHERE j.state = 'failed' AND t.digest IS NOT NULL;
 END $$;
 
 -- the assembly of a job enters the backlog when all its other parts are recorded
@@ -98,8 +102,10 @@ BEGIN
     + queue.conclude(s.id, ARRAY(SELECT point FROM unnest(ended) WHERE digest IS NULL), 'failed'), 'computed');
 
   IF s.parts_per_job > 1 THEN
-    DELETE FROM part_rows p USING unnest(ended) t WHERE p.submission_id = s.id
-      AND p.index >= t.point * (s.parts_per_job + 1) AND p.index < (t.point + 1) * (s.parts_per_job + 1);
+    -- a part that was on its way when its job ended is not assembled any more
+    PERFORM queue.drop_payloads(s.id, s.parts_per_job, ARRAY(SELECT sp.point FROM submission_points sp
+      WHERE sp.submission_id = s.id AND sp.outcome <> 'broken-off'
+        AND sp.point IN (SELECT r.index / (s.parts_per_job + 1) FROM unnest(rows) r)));
     PERFORM queue.add_assemblies(s.id, ARRAY(SELECT DISTINCT r.index / (s.parts_per_job + 1) FROM unnest(rows) r WHERE r.outcome = 'payloads'));
   END IF;
 

@@ -7,6 +7,8 @@ export interface PoolOptions {
   max?: number;
   /** Told about connections that broke while nobody was waiting for their answer. */
   onError?: (error: Error) => void;
+  /** A statement that has no answer by then is given up. */
+  queryTimeoutMs?: number;
 }
 
 /**
@@ -14,12 +16,15 @@ export interface PoolOptions {
  * is checked out has no listener of the pool, so each gets its own: an 'error' event without a listener ends the process.
  * A process that stops or a machine that vanishes inside a transaction must not hold its locks: the server ends it.
  */
-export function createPool(connectionString: string, { max = 10, onError = () => {} }: PoolOptions = {}): pg.Pool {
+export function createPool(
+  connectionString: string,
+  { max = 10, onError = () => {}, queryTimeoutMs = 30_000 }: PoolOptions = {},
+): pg.Pool {
   const pool = new pg.Pool({
     connectionString,
     max,
     connectionTimeoutMillis: 5_000,
-    query_timeout: 30_000,
+    query_timeout: queryTimeoutMs,
     idle_in_transaction_session_timeout: 5_000,
     keepAlive: true,
     application_name: 'nightcone',

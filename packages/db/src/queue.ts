@@ -19,7 +19,7 @@ export * from './queue-types.ts';
 const tickets = 'chunk';
 const deadTickets = 'chunk-dead';
 
-/** Seconds between heartbeats, and without one after which a lease is taken away. */
+/** Time between heartbeats, and time without one after which a lease is taken away. */
 export const heartbeatMs = 2_000;
 export const leaseMs = 8_000;
 
@@ -83,7 +83,11 @@ export class Queue {
       this.#troubleAt = Date.now();
       onError(error);
     };
-    this.#pool = createPool(connectionString, { max: worker.slots + 2, onError: this.#onError });
+    this.#pool = createPool(connectionString, {
+      max: worker.slots + 2,
+      onError: this.#onError,
+      queryTimeoutMs: 10_000,
+    });
     this.#boss = new PgBoss({
       db: repeating(this.#pool, this.#onError),
       migrate: false,

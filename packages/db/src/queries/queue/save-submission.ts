@@ -92,7 +92,7 @@ async function savePoints(tx: Transaction, submissionId: string, { kind, points 
       insert into submission_points (submission_id, point, job_hash, place, swept_values, outcome)
       select ${submissionId}::uuid, ${first}::int + t.n - 1, t.row->>'jobHash', (t.row->>'place')::int, t.row->'values',
              case when ${kind} <> 're-run' then case j.state when 'finished' then 'reused' when 'disputed' then 'reused' when 'failed' then 'failed' end end
-        from jsonb_array_elements(${batch}::jsonb) with ordinality as t(row, n) join jobs j on j.hash = t.row->>'jobHash'`);
+        from jsonb_array_elements(${batch}::jsonb) with ordinality as t(row, n) left join jobs j on j.hash = t.row->>'jobHash'`);
     first += batchSize;
   }
 }
