@@ -162,13 +162,13 @@ function layoutMarks(
       const [low, high] = mark.across === 'x' ? shown.x : shown.y;
       if (mark.at < low || mark.at > high) continue;
       const at = round(mark.across === 'x' ? x(mark.at) : y(mark.at));
-      const above = data.y - (mark.label ? 16 : 0);
+      const above = data.y - (mark.label && mark.role !== 'failed' ? 16 : 0);
       rules.push({
         role: mark.role,
         dotted: mark.dotted ?? false,
         from: mark.across === 'x' ? [at, above] : [data.x, at],
         to: mark.across === 'x' ? [at, data.y + data.height] : [data.x + data.width, at],
-        anchor: at > data.x + data.width - 40 ? 'end' : 'start',
+        anchor: mark.role === 'failed' ? 'middle' : at > data.x + data.width - 40 ? 'end' : 'start',
         ...(mark.label ? { label: mark.label } : {}),
       });
     }

@@ -4,21 +4,28 @@ export const rampSteps = 40;
 
 /** Corner points of a ramp in OKLCH; between them lightness, chroma and hue are linear, lightness over the whole. */
 type Corner = [at: number, chroma: number, hue: number];
-const density: Corner[] = [
-  [0, 0.018, 108],
+const densityOnPaper: Corner[] = [
+  [0, 0.014, 100],
   [0.2, 0.055, 145],
   [0.5, 0.098, 185],
   [0.78, 0.088, 235],
   [1, 0.045, 272],
 ];
+const densityOnNight: Corner[] = [
+  [0, 0.03, 275],
+  [0.22, 0.075, 250],
+  [0.5, 0.098, 195],
+  [0.8, 0.1, 155],
+  [1, 0.05, 108],
+];
 const positive: Corner[] = [
-  [0, 0.008, 90],
-  [0.45, 0.105, 145],
+  [0, 0.01, 150],
+  [0.45, 0.105, 150],
   [1, 0.07, 155],
 ];
 const negative: Corner[] = [
-  [0, 0.008, 90],
-  [0.45, 0.12, 310],
+  [0, 0.01, 308],
+  [0.45, 0.12, 308],
   [1, 0.1, 305],
 ];
 
@@ -37,8 +44,8 @@ const steps = (make: (fraction: number) => string, count: number) =>
   Array.from({ length: count }, (_, i) => make(i / (count - 1)));
 
 /** Equal steps of lightness, so that equal ratios of a density look equal; low values lie at the ground of the theme. */
-const densityPaper = steps((f) => color(density, f, 0.965, 0.24), rampSteps);
-const densityNight = steps((f) => color(density, f, 0.22, 0.95), rampSteps);
+const densityPaper = steps((f) => color(densityOnPaper, f, 0.965, 0.24), rampSteps);
+const densityNight = steps((f) => color(densityOnNight, f, 0.22, 0.95), rampSteps);
 /** 0 in the middle (between the two middle steps), equal lightness at equal distance on both sides. */
 const half = rampSteps / 2;
 const signed = (from: number, to: number) => [

@@ -48,7 +48,14 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
       const [x2, y2] = rule.to;
       const dotted = rule.dotted ? ' stroke-dasharray="1 4"' : '';
       const word = rule.label
-        ? text(x1 + (rule.anchor === 'end' ? -5 : 5), y1 + 6, rule.label, palette.ink2, sans, rule.anchor)
+        ? text(
+            x1 + labelShift[rule.anchor],
+            y1 + (rule.anchor === 'middle' ? -5 : 6),
+            rule.label,
+            palette.ink2,
+            sans,
+            rule.anchor,
+          )
         : '';
       return `<path d="M${x1},${y1}L${x2},${y2}" fill="none" stroke="${palette[roleStyles[rule.role].color]}"${dotted}/>${word}`;
     }),
@@ -57,6 +64,9 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
     '</svg>\n',
   ].join('\n');
 }
+
+/** A word stands beside its rule, a mark of failure over it. */
+export const labelShift = { start: 5, middle: 0, end: -5 };
 
 const pen = (role: Role, palette: Palette, width?: number) => {
   const style = roleStyles[role];

@@ -1,4 +1,4 @@
-import { type Geometry, markPath, type PointsGeometry, roleStyles } from '@nightcone/drawing';
+import { type Geometry, labelShift, markPath, type PointsGeometry, roleStyles } from '@nightcone/drawing';
 import { memo, useId } from 'react';
 import { numbered } from './numbered.ts';
 import { roleColor } from './role-colors.ts';
@@ -44,10 +44,10 @@ export function PlotRules({ geometry }: { geometry: Geometry }) {
           />
           {rule.label ? (
             <text
-              x={rule.from[0] + (rule.anchor === 'end' ? -6 : 6)}
-              y={rule.from[1] + 6}
+              x={rule.from[0] + labelShift[rule.anchor]}
+              y={rule.from[1] + (rule.anchor === 'middle' ? -5 : 6)}
               textAnchor={rule.anchor}
-              fontSize={12}
+              fontSize={rule.anchor === 'middle' ? 15 : 12}
               className="fill-ink2"
             >
               {rule.label}

@@ -69,7 +69,8 @@ function SweepDrawing({
   const [fixed, setFixed] = useState<(number | null)[]>(() => axes.map((_, i) => (i < 2 ? null : 0)));
   const yAxis = axes.length > 1 ? (xAxis === 0 ? 1 : 0) : null;
   const wide = yAxis !== null && axes.every((axis, i) => i > 1 || axis.places.length >= 5);
-  const [form, setForm] = useState<'map' | 'lines'>(quantity.rows === 0 && wide ? 'map' : 'lines');
+  const [form, setForm] = useState<'map' | 'lines'>(wide ? 'map' : 'lines');
+  const [entry, setEntry] = useState<number | null>(null);
   const query = useApi('getSweepQuantity', {
     params: { id: sweep.id },
     query: { array: quantity.array, ...(quantity.rows > 0 ? { row } : {}) },
@@ -77,7 +78,9 @@ function SweepDrawing({
   const built = useMemo(() => {
     if (!query.data) return null;
     const rows = new Map(query.data.rows.map((each) => [each.index, each.values]));
+    const longest = Math.max(1, ...query.data.rows.map((each) => each.values.length));
     const drawing = {
+      entry: Math.min(entry ?? Math.floor(longest / 2), longest - 1),
       axes,
       points,
       quantity: { label: quantity.label, symbol: quantity.symbol, unit: query.data.unit, rows },
@@ -85,7 +88,7 @@ function SweepDrawing({
       fixed,
     };
     return form === 'map' && yAxis !== null ? buildSweepMap(drawing, yAxis) : buildSweepSeries(drawing);
-  }, [query.data, axes, points, quantity, xAxis, fixed, form, yAxis]);
+  }, [query.data, axes, points, quantity, xAxis, fixed, form, yAxis, entry]);
   const height = compact ? 190 : 420;
   const open = (index: number) => {
     const point = built?.targets.describe(index).point;
@@ -113,6 +116,19 @@ function SweepDrawing({
               onChange={(event) =>
                 setRow(Math.min(quantity.rows - 1, Math.max(0, Math.round(Number(event.target.value) || 0))))
               }
+            />
+          ) : null}
+          {form === 'map' && yAxis !== null && quantity.rows > 0 ? (
+            <TextField
+              label="number in the row"
+              type="number"
+              min={1}
+              placeholder="middle"
+              value={entry === null ? '' : entry + 1}
+              onChange={(event) => {
+                const number = Math.round(Number(event.target.value));
+                setEntry(number >= 1 ? number - 1 : null);
+              }}
             />
           ) : null}
           {axes.length > 1 ? (

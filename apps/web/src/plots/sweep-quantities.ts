@@ -24,6 +24,8 @@ function rowsOf(body: Body, dims: readonly string[], ragged: boolean): { count: 
       const texts = kindOf(body.parameters.edge) === 'armchair' ? ['both'] : both ? ['K', 'K′'] : [first];
       return { label: 'valley', texts };
     }
+    if (dim === 'spin')
+      return { label: 'spin', texts: kindOf(body.parameters.spin) === 'zeeman' ? ['up', 'down'] : ['both'] };
     const axis = { k: 'kPerNm', field: 'fieldT', energy: 'energyEv', carrier: 'carrierPerNm2' }[dim];
     const values = axisValues(axis ? (body.parameters[axis] as Json | undefined) : undefined);
     return { label: dim, texts: values.map(text) };
@@ -39,18 +41,27 @@ function rowsOf(body: Body, dims: readonly string[], ragged: boolean): { count: 
         const value = names[i]?.texts[rest % length];
         rest = Math.floor(rest / length);
         if (value !== undefined)
-          parts.unshift(names[i]?.label === 'valley' ? `valley ${value}` : `${names[i]?.label} = ${value}`);
+          if (length > 1 || names[i]?.label === 'valley')
+            parts.unshift(
+              `${names[i]?.label}${Number.isNaN(Number.parseFloat(value.replace('−', '-'))) ? '' : ' ='} ${value}`,
+            );
       }
       return parts.join(', ');
     },
   };
 }
 
+/** The quantity people look for first, then single values, then the rest in the order of the definition. */
+const first = ['gapEv', 'energies'];
+const rank = ({ array, single }: { array: string; single: boolean }): number =>
+  first.includes(array) ? first.indexOf(array) : single ? 10 : 20;
+
 /** What can be drawn against a swept parameter: single values first, then rows of lists. */
 export function sweepQuantities(modelId: string, body: Body): SweepQuantity[] {
   const model = findModel(modelId);
   if (!model) return [];
-  const wanted = model.results.filter((result) => result.dtype === 'f64' && result.dims.length <= 4);
+  const inputs = new Set(model.parameters.map(({ name }) => name));
+  const wanted = model.results.filter((result) => result.dtype === 'f64' && !inputs.has(result.name));
   const quantities = wanted.map((result) => {
     const rows = rowsOf(body, result.dims, result.ragged !== undefined);
     const single = result.dims.length === 0;
@@ -64,7 +75,7 @@ export function sweepQuantities(modelId: string, body: Body): SweepQuantity[] {
       single,
     };
   });
-  return quantities.sort((a, b) => Number(b.single) - Number(a.single)).map(({ single: _, ...quantity }) => quantity);
+  return quantities.sort((a, b) => rank(a) - rank(b)).map(({ single: _, ...quantity }) => quantity);
 }
 
 /** The row a reader asks for first: the middle of the axis, in the first valley. */

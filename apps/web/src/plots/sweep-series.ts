@@ -20,6 +20,8 @@ interface SweepDrawing {
   xAxis: number;
   /** Index on every other axis that is shown; null: all of them. */
   fixed: readonly (number | null)[];
+  /** Which number of a row a map shows. */
+  entry?: number;
 }
 
 const ended = new Set(['failed', 'broken-off', 'cancelled']);
@@ -100,7 +102,10 @@ export function buildSweepSeries({ axes, points, quantity, xAxis, fixed }: Sweep
 }
 
 /** Two swept parameters as a map; points that have not arrived stay empty, failed ones are crossed. */
-export function buildSweepMap({ axes, points, quantity, xAxis, fixed }: SweepDrawing, yAxis: number): BuiltPlot {
+export function buildSweepMap(
+  { axes, points, quantity, xAxis, fixed, entry = 0 }: SweepDrawing,
+  yAxis: number,
+): BuiltPlot {
   const lengths = axes.map((axis) => axis.places.length);
   const x = axes[xAxis] as DrawnAxis;
   const y = axes[yAxis] as DrawnAxis;
@@ -113,7 +118,7 @@ export function buildSweepMap({ axes, points, quantity, xAxis, fixed }: SweepDra
     if (fixed.some((index, axis) => axis !== xAxis && axis !== yAxis && index !== null && at[axis] !== index)) continue;
     const place = (at[xAxis] as number) * y.places.length + (at[yAxis] as number);
     indices[place] = point.index;
-    values[place] = quantity.rows.get(point.index)?.[0] ?? Number.NaN;
+    values[place] = quantity.rows.get(point.index)?.[entry] ?? Number.NaN;
     if (ended.has(point.state)) {
       failedX.push(x.places[at[xAxis] as number] as number);
       failedY.push(y.places[at[yAxis] as number] as number);
