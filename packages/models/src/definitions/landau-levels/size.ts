@@ -33,17 +33,17 @@ export const FIELDS_PER_SLICE = 16;
 export const sliceCount: Expression = ceilOver(fields, FIELDS_PER_SLICE);
 
 const payloads = times(8, row, fields);
-export const resultBytes: Expression = times(
-  fields,
-  sum(
-    times(9, listed),
-    times(8, perValley),
-    times(9, sum(2, hasLines), energies),
-    times(18, carriers),
-    times(9, valleyCount, transitions),
-    17,
-  ),
+const perFieldBytes = sum(
+  times(9, listed),
+  times(8, perValley),
+  times(9, sum(2, hasLines), energies),
+  times(18, carriers),
+  times(9, valleyCount, transitions),
+  25,
 );
+/** Axes and labels, which do not repeat with the field. */
+const labelBytes = sum(times(8, energies), times(8, carriers), times(4, levels), times(8, transitions), 16);
+export const resultBytes: Expression = sum(times(fields, perFieldBytes), labelBytes);
 export const sliceBytes: Expression = sum(1_048_576, times(8 * FIELDS_PER_SLICE, row), times(8192, levels));
 export const assembleBytes: Expression = sum(1_048_576, payloads, resultBytes, times(8192, levels));
 
