@@ -4,6 +4,7 @@ import { createPool } from './client.ts';
 import { listen, type QueueMessage } from './queries/listen.ts';
 import { beatLeases } from './queries/queue/beat-leases.ts';
 import { claimChunk } from './queries/queue/claim-chunk.ts';
+import { cleanUp } from './queries/queue/clean-up.ts';
 import { closeChunk, closeDeadChunk, dropLease, reapLeases } from './queries/queue/close-chunk.ts';
 import { cutChunk, type SlotOffer } from './queries/queue/cut-chunk.ts';
 import { readPayloads } from './queries/queue/read-payloads.ts';
@@ -22,6 +23,7 @@ const deadTickets = 'chunk-dead';
 /** Time between heartbeats, and time without one after which a lease is taken away. */
 export const heartbeatMs = 2_000;
 export const leaseMs = 8_000;
+const cleanUpMs = 3_600_000;
 
 /** The ticket queues exist from the deploy step on: several processes that create one at the same time deadlock. */
 export async function installTickets(connectionString: string): Promise<void> {
@@ -75,6 +77,7 @@ export class Queue {
   readonly #listeners = new Set<{ stop: () => Promise<void> }>();
   /** Leases of others are judged only after the database has answered for one whole lease time. */
   #troubleAt = Date.now();
+  #cleanedAt = 0;
 
   constructor({ connectionString, worker, onError = () => {} }: QueueOptions) {
     this.worker = worker;
@@ -197,6 +200,10 @@ export class Queue {
   async reap(): Promise<number> {
     if (Date.now() - this.#troubleAt < leaseMs) return 0;
     try {
+      if (Date.now() - this.#cleanedAt > cleanUpMs) {
+        await cleanUp(this.#pool);
+        this.#cleanedAt = Date.now();
+      }
       return await this.#transaction(async (client) => {
         const lost = await reapLeases(client, leaseMs);
         for (const lease of lost) {
