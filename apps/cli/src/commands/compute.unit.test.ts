@@ -51,14 +51,18 @@ describe.each(smallQuestions)('$name', ({ name, specification }) => {
   });
 });
 
-test('what the kernel refuses ends with 3 and its reason, on one thread and on several', async () => {
+test('what the model’s validity refuses ends with 2 unless it is insisted on; what the kernel refuses ends with 3 and its reason, on one thread and on several', async () => {
   const specification = {
     model: 'landau-levels',
     parameters: { system: { kind: 'bilayer', v3Ratio: 0.1 }, fieldT: { kind: 'values', values: [1, 2] } },
     numerics: { method: { kind: 'closed-form' } },
   };
+  const beyond = await run(['compute', '-'], { stdin: specification });
+  expect(beyond.exitCode).toBe(2);
+  expect(beyond.problem()).toMatchObject({ code: 'validity-refused', errors: [{ field: '/numerics/method' }] });
   for (const threads of ['1', '2']) {
-    const refused = await run(['compute', '-', '--threads', threads], { stdin: specification });
+    const argv = ['compute', '-', '--beyond-validity', '--threads', threads];
+    const refused = await run(argv, { stdin: specification });
     expect(refused).toMatchObject({ exitCode: 3, out: '' });
     expect(refused.err).toMatch(/^method-unavailable: /);
   }
