@@ -8,6 +8,7 @@ import { PlotActions } from './plot-actions.tsx';
 import type { Body, ResultData } from './result-data.ts';
 import { Segmented } from './segmented.tsx';
 import { useResultData } from './use-result-data.ts';
+import { ViewChoice } from './view-choice.tsx';
 import { type View, viewsOf } from './views.ts';
 
 type PlottedJob = Pick<JobView, 'hash' | 'model' | 'title' | 'kernel' | 'resultDigest' | 'arrays' | 'specification'>;
@@ -58,7 +59,7 @@ export function ResultPlot({
       {problem ? (
         <ProblemNote error={problem} retry={retry} />
       ) : data ? (
-        <Drawn job={job} view={view} data={data} height={height} onReadout={onReadout} reach={reach} />
+        <Drawn key={view.id} job={job} view={view} data={data} height={height} onReadout={onReadout} reach={reach} />
       ) : (
         <div style={{ minHeight: height + 60 }}>
           <Loading what="the result" />
@@ -83,26 +84,29 @@ function Drawn({
   onReadout: ((readout: Readout | null) => void) | undefined;
   reach: number | undefined;
 }) {
-  const built = useMemo(() => view.build(data), [view, data]);
+  const [choice, setChoice] = useState(0);
+  const built = useMemo(() => view.build(data, choice), [view, data, choice]);
   return (
-    <PlotView
-      key={view.id}
-      built={built}
-      height={height}
-      {...(onReadout ? { onReadout } : {})}
-      {...(reach ? { reach } : {})}
-      actions={
-        <PlotActions
-          built={built}
-          name={`${job.model}-${view.id}-${job.hash.slice(0, 12)}`}
-          metadata={{
-            job: job.hash,
-            kernel: job.kernel,
-            ...(job.resultDigest ? { result: job.resultDigest } : {}),
-            program: `Nightcone, job ${shortHash(job.hash)}`,
-          }}
-        />
-      }
-    />
+    <>
+      <ViewChoice view={view} data={data} choice={choice} onChoice={setChoice} />
+      <PlotView
+        built={built}
+        height={height}
+        {...(onReadout ? { onReadout } : {})}
+        {...(reach ? { reach } : {})}
+        actions={
+          <PlotActions
+            built={built}
+            name={`${job.model}-${view.id}-${job.hash.slice(0, 12)}`}
+            metadata={{
+              job: job.hash,
+              kernel: job.kernel,
+              ...(job.resultDigest ? { result: job.resultDigest } : {}),
+              program: `Nightcone, job ${shortHash(job.hash)}`,
+            }}
+          />
+        }
+      />
+    </>
   );
 }

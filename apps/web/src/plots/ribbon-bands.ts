@@ -11,6 +11,8 @@ type Valley = 'K' | 'K-prime' | 'pair-lower' | 'pair-upper' | 'mixed';
 
 /** Which valleys the blocks of rows belong to: one each, or both at once for an armchair edge. */
 function valleyBlocks(data: ResultData): ('K' | 'K-prime' | 'both')[] {
+  const signs = data.arrays.get('valley')?.values;
+  if (signs) return Array.from(signs, (sign) => (sign > 0 ? 'K' : sign < 0 ? 'K-prime' : 'both'));
   if (kindOf(data.body.parameters.edge) === 'armchair') return ['both'];
   const valleys = data.body.parameters.valleys;
   return valleys === 'both' ? ['K', 'K-prime'] : [valleys === 'K-prime' ? 'K-prime' : 'K'];
@@ -42,6 +44,7 @@ export function buildRibbonBands(data: ResultData): BuiltPlot {
   const error = data.arrays.get('errorEstimate')?.values;
   const errorAt = (at: number) => (error && isValid(data, 'errorEstimate', at) ? error[at] : undefined);
   const weights = data.arrays.get('valleyWeight')?.values;
+  const numbers = data.arrays.get('levelIndex')?.values;
   return {
     plot: {
       caption: caption(data, axis.length),
@@ -62,7 +65,7 @@ export function buildRibbonBands(data: ResultData): BuiltPlot {
         const estimate = errorAt(at);
         return {
           value: formatQuantity(energy, 'eV', estimate),
-          description: `${valleyWords(valleyOf[at] as Valley)}, level ${at - from + 1} at this k`,
+          description: `${valleyWords(valleyOf[at] as Valley)}, level ${numbers ? `n = ${numbers[at]}` : `${at - from + 1} at this k`}`,
           rows: [
             { symbol: 'k', label: 'wave number', value: formatQuantity(k, '1/nm') },
             { symbol: 'dE/dk', label: 'slope', value: formatQuantity(slopes[at] as number, 'eV nm') },

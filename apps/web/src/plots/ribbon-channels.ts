@@ -1,4 +1,4 @@
-import { formatQuantity } from '@nightcone/drawing';
+import { formatNumber, formatQuantity } from '@nightcone/drawing';
 import { type BuiltPlot, domainOf } from './built-plot.ts';
 import { axisOf, isValid, need, type ResultData } from './result-data.ts';
 
@@ -23,9 +23,9 @@ export function buildRibbonChannels(data: ResultData): BuiltPlot {
   const proved = valid.filter(Boolean).length;
   return {
     plot: {
-      caption: `Open channels, spin not counted; proved at ${proved} of ${energies.length} energies.`,
+      caption: `Open channels, spin counted; proved at ${proved} of ${energies.length} energies.`,
       x: { symbol: 'E', unit: 'eV', domain: domainOf(energies) },
-      y: { symbol: 'N', unit: '', domain: [0, most + 0.5], integer: true },
+      y: { symbol: 'M', unit: '', domain: [0, most + 0.5], integer: true },
       marks: [{ kind: 'line', role: 'ink', x, y }],
     },
     targets: {
@@ -34,8 +34,8 @@ export function buildRibbonChannels(data: ResultData): BuiltPlot {
       describe(i) {
         const at = valid.flatMap((good, index) => (good ? [index] : []))[i] as number;
         return {
-          value: `${channels[at]} open`,
-          description: 'channels, spin not counted',
+          value: `${formatNumber(channels[at] as number)} open`,
+          description: 'right-moving modes, spin counted',
           rows: [{ symbol: 'E', label: 'energy', value: formatQuantity(energies[at] as number, 'eV') }],
         };
       },

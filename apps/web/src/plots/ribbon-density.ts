@@ -1,79 +1,120 @@
-import { formatQuantity } from '@nightcone/drawing';
+import { formatQuantity, type Mark } from '@nightcone/drawing';
 import { type BuiltPlot, domainOf, rangeOf } from './built-plot.ts';
-import { axisOf, need, type ResultData } from './result-data.ts';
+import { axisOf, need, type ResultData, rowBounds } from './result-data.ts';
+
+const valleyWords = (sign: number) => (sign > 0 ? 'valley K' : sign < 0 ? 'valley K′' : 'both valleys');
+
+/** One entry for every valley and every k whose densities were asked for. */
+export function densityStates(data: ResultData): string[] {
+  const k = axisOf(data, 'kPerNm');
+  const kIndex = need(data, 'densityKIndex');
+  const rows = statesOf(data);
+  const valleys = need(data, 'valley').values;
+  return rows.map(({ row, from, to }) => {
+    const valley = valleyWords(valleys[Math.floor((row * valleys.length) / rows.length)] ?? 0);
+    const at = from < to ? formatQuantity(k[kIndex.values[from] as number] ?? 0, '1/nm') : 'no level';
+    return `k = ${at}, ${valley}`;
+  });
+}
+
+function statesOf(data: ResultData): { row: number; from: number; to: number }[] {
+  const kIndex = need(data, 'densityKIndex');
+  const count = kIndex.ragged ? need(data, kIndex.ragged).values.length - 1 : kIndex.values.length;
+  return Array.from({ length: count }, (_, row) => {
+    const [from, to] = rowBounds(data, kIndex, row);
+    return { row, from, to };
+  });
+}
 
 /**
- * Densities across the width of the states asked for: sublattice A solid, B dashed on the same ground, one curve for
- * every state, shifted so that each stands on its own line.
+ * Densities across the width of all levels at one k, each standing on its energy: sublattice A solid, B dashed, one
+ * common scale, so that heights compare.
  */
-export function buildRibbonDensity(data: ResultData): BuiltPlot {
-  const a = need(data, 'densityA');
-  const b = need(data, 'densityB');
-  const across = need(data, 'positionNm').values;
-  const points = a.shape.at(-1) ?? across.length;
-  const states = Math.floor(a.values.length / Math.max(1, points));
-  const total = (state: number, i: number) =>
-    (a.values[state * points + i] as number) + (b.values[state * points + i] as number);
-  const most = rangeOf(
-    [Float64Array.from({ length: states * points }, (_, i) => total(Math.floor(i / points), i % points))],
-    [0, 1],
-    0,
-  )[1];
-  const xs = Array.from({ length: points }, (_, i) => across[i] as number);
-  const lift = (state: number) => state * most * 0.55;
-  const curve = (values: ArrayLike<number>, state: number) =>
-    xs.map((_, i) => lift(state) + (values[state * points + i] as number));
-  const energies = data.arrays.get('densityEnergyEv')?.values;
-  const k = axisOf(data, 'kPerNm');
-  const kIndex = data.arrays.get('densityKIndex')?.values;
-  const unit = a.unit || '1/nm';
+export function buildRibbonDensity(data: ResultData, state = 0): BuiltPlot {
+  const across = Array.from(need(data, 'positionNm').values, Number);
+  const a = need(data, 'densityA').values;
+  const b = need(data, 'densityB').values;
+  const energies = need(data, 'densityEnergyEv').values;
+  const states = statesOf(data);
+  const { from, to } = states[Math.min(state, states.length - 1)] ?? { from: 0, to: 0 };
+  const n = across.length;
+  const levels = Array.from({ length: to - from }, (_, i) => from + i).sort(
+    (p, q) => (energies[p] as number) - (energies[q] as number),
+  );
+  const spacing = typicalSpacing(levels.map((level) => energies[level] as number));
+  let most = 0;
+  for (const level of levels)
+    for (let i = 0; i < n; i++) most = Math.max(most, a[level * n + i] as number, b[level * n + i] as number);
+  const lift = most > 0 ? (0.9 * spacing) / most : 0;
+  const curve = (values: ArrayLike<number>, level: number) =>
+    across.map((_, i) => (energies[level] as number) + lift * (values[level * n + i] as number));
+  const marks: Mark[] = levels.flatMap((level): Mark[] => [
+    { kind: 'rule', role: 'closed', across: 'y', at: energies[level] as number },
+    { kind: 'line', role: 'ink', x: across, y: curve(a, level), width: 1.4 },
+    { kind: 'line', role: 'other', x: across, y: curve(b, level), width: 1.4 },
+  ]);
+  const [low, high] = rangeOf([levels.map((level) => energies[level] as number)], [-0.1, 0.1], 0);
+  const unit = need(data, 'densityA').unit;
   return {
     plot: {
-      caption: `Density across the width of ${states} states, A solid and B dashed, each lifted above the one before.`,
-      x: { symbol: 'u', unit: 'nm', domain: domainOf(xs) },
-      y: { symbol: '\\rho', unit, domain: [0, lift(Math.max(0, states - 1)) + most * 1.05] },
-      marks: Array.from({ length: states }, (_, state) => state).flatMap((state) => [
-        { kind: 'rule' as const, role: 'closed' as const, across: 'y' as const, at: lift(state) },
-        { kind: 'line' as const, role: 'K' as const, x: xs, y: curve(a.values, state), width: 1.5 },
-        { kind: 'line' as const, role: 'K-prime' as const, x: xs, y: curve(b.values, state), width: 1.5 },
-      ]),
+      caption: `Density across the width of ${levels.length} levels at ${densityStates(data)[state] ?? 'one k'}, each on its energy.`,
+      x: { symbol: 'u', unit: 'nm', domain: domainOf(across) },
+      y: { symbol: 'E', unit: 'eV', domain: [low - 0.4 * spacing, high + 1.1 * spacing] },
+      marks,
       key: [
-        { role: 'K', label: 'sublattice A', mark: 'line' },
-        { role: 'K-prime', label: 'sublattice B', mark: 'line' },
+        { role: 'ink', label: 'on sublattice A', mark: 'line' },
+        { role: 'other', label: 'on sublattice B', mark: 'line' },
       ],
     },
     targets: {
-      x: Array.from({ length: states * points }, (_, i) => xs[i % points] as number),
-      y: Array.from(
-        { length: states * points },
-        (_, i) => lift(Math.floor(i / points)) + total(Math.floor(i / points), i % points),
+      x: levels.flatMap(() => across),
+      y: levels.flatMap((level) =>
+        across.map(
+          (_, i) =>
+            (energies[level] as number) + lift * Math.max(a[level * n + i] as number, b[level * n + i] as number),
+        ),
       ),
       describe(i) {
-        const state = Math.floor(i / points);
+        const at = (levels[Math.floor(i / n)] as number) * n + (i % n);
         return {
-          value: formatQuantity(total(state, i % points), unit),
-          description: `state ${state + 1}${kIndex ? ` at k = ${formatQuantity(k[kIndex[state] as number] ?? 0, '1/nm')}` : ''}`,
+          value: formatQuantity((a[at] as number) + (b[at] as number), unit),
+          description: 'density of both sublattices',
           rows: [
-            { symbol: 'u', label: 'from the centre', value: formatQuantity(xs[i % points] as number, 'nm') },
-            { label: 'on A', value: formatQuantity(a.values[i] as number, unit) },
-            { label: 'on B', value: formatQuantity(b.values[i] as number, unit) },
-            ...(energies
-              ? [{ symbol: 'E', label: 'energy', value: formatQuantity(energies[state] as number, 'eV') }]
-              : []),
+            {
+              symbol: 'E',
+              label: 'energy',
+              value: formatQuantity(energies[levels[Math.floor(i / n)] as number] as number, 'eV'),
+            },
+            { symbol: 'u', label: 'from the centre', value: formatQuantity(across[i % n] as number, 'nm') },
+            { label: 'on A', value: formatQuantity(a[at] as number, unit) },
+            { label: 'on B', value: formatQuantity(b[at] as number, unit) },
           ],
         };
       },
     },
     table: {
       columns: [
-        { label: 'state', unit: '' },
+        { label: 'E', unit: 'eV' },
         { label: 'u', unit: 'nm' },
         { label: 'density on A', unit },
         { label: 'density on B', unit },
       ],
-      rows: states * points,
-      cell: (row, column) =>
-        [Math.floor(row / points) + 1, xs[row % points], a.values[row], b.values[row]][column] as number,
+      rows: levels.length * n,
+      cell(row, column) {
+        const level = levels[Math.floor(row / n)] as number;
+        const at = level * n + (row % n);
+        return [energies[level], across[row % n], a[at], b[at]][column] as number;
+      },
     },
   };
+}
+
+/** The median distance of neighbours, so that one close pair does not flatten all curves. */
+function typicalSpacing(energies: readonly number[]): number {
+  const gaps = energies
+    .slice(1)
+    .map((energy, i) => energy - (energies[i] as number))
+    .filter((gap) => gap > 1e-6)
+    .sort((p, q) => p - q);
+  return gaps[Math.floor(gaps.length / 2)] ?? 0.05;
 }

@@ -9,7 +9,7 @@ import { PlotActions } from './plot-actions.tsx';
 import type { Body } from './result-data.ts';
 import { Segmented } from './segmented.tsx';
 import { drawnAxis } from './sweep-axis.ts';
-import { middleRow, type SweepQuantity, sweepQuantities } from './sweep-quantities.ts';
+import { rowAt, type SweepQuantity, sweepQuantities } from './sweep-quantities.ts';
 import { buildSweepMap, buildSweepSeries } from './sweep-series.ts';
 
 type DrawnSweep = Pick<Sweep, 'id' | 'title' | 'model' | 'axes' | 'specification'>;
@@ -63,7 +63,7 @@ function SweepDrawing({
   onQuantity: (array: string) => void;
 }) {
   const navigate = useNavigate();
-  const [row, setRow] = useState(() => middleRow(quantity));
+  const [places, setPlaces] = useState(() => quantity.dims.map((dim) => dim.first));
   const axes = useMemo(() => sweep.axes.map((axis) => drawnAxis(sweep, axis)), [sweep]);
   const [xAxis, setXAxis] = useState(0);
   const [fixed, setFixed] = useState<(number | null)[]>(() => axes.map((_, i) => (i < 2 ? null : 0)));
@@ -73,7 +73,7 @@ function SweepDrawing({
   const [entry, setEntry] = useState<number | null>(null);
   const query = useApi('getSweepQuantity', {
     params: { id: sweep.id },
-    query: { array: quantity.array, ...(quantity.rows > 0 ? { row } : {}) },
+    query: { array: quantity.array, ...(quantity.dims.length > 0 ? { row: rowAt(quantity.dims, places) } : {}) },
   });
   const built = useMemo(() => {
     if (!query.data) return null;
@@ -106,19 +106,25 @@ function SweepDrawing({
               </option>
             ))}
           </SelectField>
-          {quantity.rows > 1 ? (
-            <TextField
-              label={`row, ${quantity.rowLabel(row)}`}
-              type="number"
-              min={0}
-              max={quantity.rows - 1}
-              value={row}
-              onChange={(event) =>
-                setRow(Math.min(quantity.rows - 1, Math.max(0, Math.round(Number(event.target.value) || 0))))
-              }
-            />
-          ) : null}
-          {form === 'map' && yAxis !== null && quantity.rows > 0 ? (
+          {quantity.dims.map((dim, i) =>
+            dim.texts.length > 1 ? (
+              <SelectField
+                key={dim.label}
+                label={dim.label}
+                value={places[i] ?? dim.first}
+                onChange={(event) =>
+                  setPlaces(places.map((each, at) => (at === i ? Number(event.target.value) : each)))
+                }
+              >
+                {dim.texts.map((text, place) => (
+                  <option key={text} value={place}>
+                    {text}
+                  </option>
+                ))}
+              </SelectField>
+            ) : null,
+          )}
+          {form === 'map' && yAxis !== null && quantity.dims.length > 0 ? (
             <TextField
               label="number in the row"
               type="number"

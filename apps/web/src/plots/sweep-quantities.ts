@@ -6,50 +6,46 @@ export interface SweepQuantity {
   label: string;
   symbol: string;
   unit: string;
-  /** Number of rows to choose from; 0: the array is one value. */
-  rows: number;
-  /** What a row is, in words. */
-  rowLabel(row: number): string;
+  /** Leading dims of the array, from which a reader chooses one row; none: one value or one short list. */
+  dims: RowDim[];
+}
+export interface RowDim {
+  label: string;
+  texts: string[];
+  /** Shown first: the first valley or spin, the middle of an axis. */
+  first: number;
 }
 
 const text = (value: number) => String(Number(value.toPrecision(6))).replace('-', '−');
+const axisOfDim: Record<string, string> = {
+  k: 'kPerNm',
+  field: 'fieldT',
+  energy: 'energyEv',
+  carrier: 'carrierPerNm2',
+};
 
-/** The rows of the first dims of an array, counted from the specification's own axes. */
-function rowsOf(body: Body, dims: readonly string[], ragged: boolean): { count: number; label(row: number): string } {
-  const lead = ragged ? dims.slice(0, 2) : dims.slice(0, -1);
-  const names: { label: string; texts: string[] }[] = lead.map((dim) => {
-    if (dim === 'valley') {
-      const both = body.parameters.valleys === 'both' && kindOf(body.parameters.edge) !== 'armchair';
-      const first = body.parameters.valleys === 'K-prime' ? 'K′' : 'K';
-      const texts = kindOf(body.parameters.edge) === 'armchair' ? ['both'] : both ? ['K', 'K′'] : [first];
-      return { label: 'valley', texts };
-    }
-    if (dim === 'spin')
-      return { label: 'spin', texts: kindOf(body.parameters.spin) === 'zeeman' ? ['up', 'down'] : ['both'] };
-    const axis = { k: 'kPerNm', field: 'fieldT', energy: 'energyEv', carrier: 'carrierPerNm2' }[dim];
-    const values = axisValues(axis ? (body.parameters[axis] as Json | undefined) : undefined);
-    return { label: dim, texts: values.map(text) };
-  });
-  const lengths = names.map((name) => Math.max(1, name.texts.length));
+/** What stands at each place of a leading dim, counted from the specification's own axes. */
+function rowDim(body: Body, dim: string): RowDim {
+  if (dim === 'valley') {
+    const armchair = kindOf(body.parameters.edge) === 'armchair';
+    const chosen = body.parameters.valleys;
+    const texts = armchair ? ['both'] : chosen === 'both' ? ['K', 'K′'] : [chosen === 'K-prime' ? 'K′' : 'K'];
+    return { label: 'valley', texts, first: 0 };
+  }
+  if (dim === 'spin')
+    return { label: 'spin', texts: kindOf(body.parameters.spin) === 'zeeman' ? ['up', 'down'] : ['both'], first: 0 };
+  const axis = axisOfDim[dim];
+  const values = axisValues(axis ? (body.parameters[axis] as Json | undefined) : undefined);
   return {
-    count: lengths.reduce((product, length) => product * length, 1),
-    label(row) {
-      let rest = row;
-      const parts: string[] = [];
-      for (let i = names.length - 1; i >= 0; i--) {
-        const length = lengths[i] as number;
-        const value = names[i]?.texts[rest % length];
-        rest = Math.floor(rest / length);
-        if (value !== undefined)
-          if (length > 1 || names[i]?.label === 'valley')
-            parts.unshift(
-              `${names[i]?.label}${Number.isNaN(Number.parseFloat(value.replace('−', '-'))) ? '' : ' ='} ${value}`,
-            );
-      }
-      return parts.join(', ');
-    },
+    label: dim,
+    texts: values.length > 0 ? values.map(text) : ['all'],
+    first: Math.floor((values.length - 1) / 2),
   };
 }
+
+/** Row of an array at these places of its leading dims: the last dim runs fastest. */
+export const rowAt = (dims: readonly RowDim[], places: readonly number[]): number =>
+  dims.reduce((row, dim, i) => row * dim.texts.length + (places[i] ?? dim.first), 0);
 
 /** The quantity people look for first, then single values, then the rest in the order of the definition. */
 const first = ['gapEv', 'energies'];
@@ -63,21 +59,15 @@ export function sweepQuantities(modelId: string, body: Body): SweepQuantity[] {
   const inputs = new Set(model.parameters.map(({ name }) => name));
   const wanted = model.results.filter((result) => result.dtype === 'f64' && !inputs.has(result.name));
   const quantities = wanted.map((result) => {
-    const rows = rowsOf(body, result.dims, result.ragged !== undefined);
-    const single = result.dims.length === 0;
+    const lead = result.ragged ? result.dims.slice(0, 2) : result.dims.slice(0, -1);
     return {
       array: result.name,
       label: result.display?.title ?? result.name,
       symbol: result.display?.symbol ?? `\\text{${result.name}}`,
       unit: result.unit,
-      rows: single || (result.dims.length === 1 && !result.ragged) ? 0 : rows.count,
-      rowLabel: rows.label,
-      single,
+      dims: lead.map((dim) => rowDim(body, dim)),
+      single: result.dims.length === 0,
     };
   });
   return quantities.sort((a, b) => rank(a) - rank(b)).map(({ single: _, ...quantity }) => quantity);
 }
-
-/** The row a reader asks for first: the middle of the axis, in the first valley. */
-export const middleRow = (quantity: SweepQuantity): number =>
-  Math.floor(quantity.rows / 2 - (quantity.rows % 2 === 0 ? 0 : 0.5));

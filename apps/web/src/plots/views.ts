@@ -4,7 +4,7 @@ import { buildFermiEnergy, buildHallPlateaus, buildLandauDensity } from './landa
 import type { ResultData } from './result-data.ts';
 import { buildRibbonBands } from './ribbon-bands.ts';
 import { buildRibbonChannels } from './ribbon-channels.ts';
-import { buildRibbonDensity } from './ribbon-density.ts';
+import { buildRibbonDensity, densityStates } from './ribbon-density.ts';
 
 /** One way to look at a result: which arrays it needs (with their companions where there are any) and how it is built. */
 export interface View {
@@ -12,7 +12,9 @@ export interface View {
   label: string;
   needs: readonly string[];
   optional: readonly string[];
-  build(data: ResultData): BuiltPlot;
+  build(data: ResultData, choice?: number): BuiltPlot;
+  /** What can be chosen inside the view, e.g. one of the states asked for. */
+  choices?: { label: string; list(data: ResultData): string[] };
 }
 
 const byModel: Record<string, readonly View[]> = {
@@ -51,14 +53,15 @@ const byModel: Record<string, readonly View[]> = {
       id: 'bands',
       label: 'subbands',
       needs: ['energies', 'velocities'],
-      optional: ['errorEstimate', 'errorEstimateValid', 'valleyWeight', 'kPerNm'],
+      optional: ['errorEstimate', 'errorEstimateValid', 'valleyWeight', 'levelIndex', 'valley', 'kPerNm'],
       build: buildRibbonBands,
     },
     {
       id: 'density',
       label: 'densities',
-      needs: ['densityA', 'densityB', 'positionNm'],
-      optional: ['densityEnergyEv', 'densityKIndex', 'kPerNm'],
+      needs: ['densityA', 'densityB', 'positionNm', 'densityEnergyEv', 'densityKIndex', 'valley'],
+      optional: ['kPerNm'],
+      choices: { label: 'levels at', list: densityStates },
       build: buildRibbonDensity,
     },
     {

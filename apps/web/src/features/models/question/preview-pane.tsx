@@ -5,6 +5,7 @@ import { PlotView } from '../../../plots/plot.tsx';
 import { PlotActions } from '../../../plots/plot-actions.tsx';
 import { PlotWords } from '../../../plots/plot-words.tsx';
 import { Segmented } from '../../../plots/segmented.tsx';
+import { ViewChoice } from '../../../plots/view-choice.tsx';
 import { viewsOf } from '../../../plots/views.ts';
 import type { Preview } from '../preview/use-preview.ts';
 
@@ -37,7 +38,11 @@ export function PreviewPane({
   const views = useMemo(() => (result ? viewsOf(model.id, result.heads) : []), [result, model.id]);
   const [chosen, setChosen] = useState<string | null>(null);
   const view = views.find(({ id }) => id === chosen) ?? views[0];
-  const built = useMemo<BuiltPlot | null>(() => (result && view ? view.build(result.data) : null), [result, view]);
+  const [choice, setChoice] = useState(0);
+  const built = useMemo<BuiltPlot | null>(
+    () => (result && view ? view.build(result.data, choice) : null),
+    [result, view, choice],
+  );
   const narrow = useNarrow();
   const height = narrow ? 270 : 400;
   const left = result && result.stated.length > 0 ? result.stated.join(', ') : 'the whole question';
@@ -55,12 +60,13 @@ export function PreviewPane({
           />
         </div>
       ) : null}
-      {built && view ? (
+      {built && view && result ? (
         <>
           {/* on a narrow page the drawing stays in view while one types; its words scroll away */}
           <div
             className={`@max-4xl:z-10 bg-ground @max-4xl:[@media(min-height:640px)]:sticky @max-4xl:top-0 ${incomplete ? 'text-ink3' : ''}`}
           >
+            <ViewChoice view={view} data={result.data} choice={choice} onChoice={setChoice} />
             <PlotView key={view.id} built={built} height={height} words={false} />
           </div>
           <PlotWords
