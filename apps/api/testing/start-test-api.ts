@@ -29,6 +29,8 @@ export interface TestApi {
   setFreeQuota: (login: Login, ms: number) => Promise<void>;
   /** What the audit says of something, the oldest first. */
   listAudit: (subjectId: string) => Promise<AuditRow[]>;
+  /** Everything that was computed ended at this instant. */
+  moveExecutions: (to: Date) => Promise<void>;
   stop: () => Promise<void>;
 }
 
@@ -101,6 +103,9 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
     const change = ms - (grantedMs - usedMs - reservedMs);
     await adjustQuota(db, nobody, { accountId: body.account.id, ms: change, reason: 'test' });
   };
+  const moveExecutions = async (to: Date) => {
+    await running.pool.query('update executions set finished_at = $1 where finished_at is not null', [to]);
+  };
   const stop = async () => {
     server.closeAllConnections();
     await new Promise((resolve) => server.close(resolve));
@@ -117,6 +122,7 @@ export async function startTestApi(change: Partial<Config> = {}): Promise<TestAp
     as,
     setFreeQuota,
     listAudit: (id) => listAuditEntries(db, id),
+    moveExecutions,
     stop,
   };
 }
