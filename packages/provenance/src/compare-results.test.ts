@@ -57,9 +57,9 @@ test('another shape, type or unit is told, not compared; what is missing is name
     result(array('e', [1]), whole, array('b', [1])),
   );
   expect(arrays).toEqual([
-    { name: 'e', verdict: 'incomparable', first: 'f64 [level 2] eV', second: 'f64 [level 1] eV' },
+    { name: 'e', verdict: 'incomparable', first: 'f64 [2] along level eV', second: 'f64 [1] along level eV' },
     { name: 'a', verdict: 'missing', from: 'second' },
-    { name: 'n', verdict: 'incomparable', first: 'f64 [level 1] eV', second: 'i32 [level 1] eV' },
+    { name: 'n', verdict: 'incomparable', first: 'f64 [1] along level eV', second: 'i32 [1] along level eV' },
     { name: 'b', verdict: 'missing', from: 'first' },
   ]);
 });

@@ -2,7 +2,7 @@ import type { KernelResult, ResultArrayData } from '@nightcone/kernel';
 import { type ArrayValues, arrayValues, indexOf } from './array-values.ts';
 import { canonicalJson } from './canonical.ts';
 
-/** A largest difference and where it stands (an index along every dimension). */
+/** A largest difference and where it stands: an index along every number of the shape (of a ragged list, the entry). */
 export interface LargestDifference {
   value: number;
   index: number[];
@@ -55,7 +55,7 @@ export function compareResults(first: KernelResult, second: KernelResult): Resul
 const missing = (name: string, from: 'first' | 'second'): ArrayComparison => ({ name, verdict: 'missing', from });
 
 const outline = ({ dtype, shape, dims, unit }: ResultArrayData) =>
-  `${dtype} [${dims.map((dim, i) => `${dim} ${shape[i]}`).join(', ')}] ${unit}`.trimEnd();
+  `${dtype} [${shape.join(', ')}] along ${dims.join(', ') || 'nothing'} ${unit}`.trimEnd();
 
 export function compareArrays(first: ResultArrayData, second: ResultArrayData): ArrayComparison {
   const { name, unit, shape } = first;

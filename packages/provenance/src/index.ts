@@ -9,6 +9,7 @@ export * from './export/number-text.ts';
 export * from './export/read-json.ts';
 export * from './export/result-record.ts';
 export * from './hash-comb.ts';
+export * from './ragged-layout.ts';
 export * from './result-digest.ts';
 export * from './sha256.ts';
 export * from './short-hash.ts';

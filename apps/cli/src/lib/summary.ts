@@ -1,5 +1,6 @@
+import type { ResultArrayData } from '@nightcone/kernel';
 import { formatQuantity } from '@nightcone/models';
-import { groupedShortHash, type ResultRecord } from '@nightcone/provenance';
+import { groupedShortHash, type ResultRecord, raggedLayout } from '@nightcone/provenance';
 
 /** A result in a few lines for people. */
 export function summaryText({ specification, jobHash, resultDigest, result, notes }: ResultRecord): string {
@@ -11,7 +12,7 @@ export function summaryText({ specification, jobHash, resultDigest, result, note
     `result  ${resultDigest}  ${groupedShortHash(resultDigest)}`,
     `kernel  ${specification.kernel}`,
     '',
-    ...columns(arrays.map(({ name, dims, shape, unit }) => [name, shapeText(dims, shape), unit])),
+    ...columns(arrays.map((array) => [array.name, shapeText(array, arrays), array.unit])),
     '',
     ...columns(Object.entries(certificate.numbers).map(([name, value]) => [name, formatQuantity(value, '', 3)])),
     `checks  ${held} of ${certificate.checks.length} hold`,
@@ -26,8 +27,15 @@ type Check = ResultRecord['result']['certificate']['checks'][number];
 const checkText = ({ computed, expected, tolerance }: Check) =>
   `${formatQuantity(computed, '', 9)} for ${formatQuantity(expected, '', 9)} ± ${formatQuantity(tolerance, '', 2)}`;
 
-const shapeText = (dims: string[], shape: number[]) =>
-  dims.length === 0 ? 'one number' : dims.map((dim, i) => `${dim} ${shape[i]}`).join(' × ');
+function shapeText(array: ResultArrayData, all: readonly ResultArrayData[]): string {
+  const { dims, shape } = array;
+  const layout = raggedLayout(array, all);
+  if (layout === undefined) return sizes(dims, shape) || 'one number';
+  const each = [layout.listDim, ...layout.entryDims];
+  return `${sizes(each, shape)} in lists over ${layout.rowDims.join(' × ')}`;
+}
+
+const sizes = (dims: string[], shape: number[]) => dims.map((dim, i) => `${dim} ${shape[i]}`).join(' × ');
 
 /** Rows as indented lines whose cells stand below each other. */
 function columns(rows: string[][]): string[] {
