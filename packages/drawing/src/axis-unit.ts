@@ -21,6 +21,7 @@ const prefixed: Record<string, { below: number; factor: number; unit: string }[]
 /** The unit in which values up to `largest` (absolute, stored units) are read most easily. */
 export function displayUnit(unit: string, largest: number): DisplayUnit {
   const size = Math.abs(largest);
-  const found = size > 0 ? prefixed[unit]?.find((candidate) => size < candidate.below) : undefined;
+  // far below the smallest prefix a power of ten reads better: 2.9e−10 eV
+  const found = size > 1e-9 ? prefixed[unit]?.find((candidate) => size < candidate.below) : undefined;
   return found ? { factor: found.factor, unit: found.unit } : { factor: 1, unit };
 }

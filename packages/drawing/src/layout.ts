@@ -1,5 +1,6 @@
 import { scaleLinear } from 'd3';
 import { displayUnit } from './axis-unit.ts';
+import { roleStyles } from './palette.ts';
 import { linePath, round } from './path.ts';
 import type { CellsMark, Mark, Plot, PointsMark, Role, Size } from './plot.ts';
 import { symbolRuns, type TextRun } from './symbol.ts';
@@ -28,7 +29,8 @@ export interface AxisGeometry {
 export interface LineGeometry {
   role: Role;
   path: string;
-  width?: number;
+  width: number;
+  dash: string | null;
 }
 export interface PointsGeometry {
   role: Role;
@@ -150,7 +152,14 @@ function layoutMarks(
   for (const mark of marks) {
     if (mark.kind === 'line') {
       const path = linePath(mark, x, y, shown.x);
-      if (path) lines.push(mark.width ? { role: mark.role, path, width: mark.width } : { role: mark.role, path });
+      const style = roleStyles[mark.role];
+      if (path)
+        lines.push({
+          role: mark.role,
+          path,
+          width: mark.width ?? style.width,
+          dash: mark.dashed ? '5 3' : style.dash,
+        });
     } else if (mark.kind === 'points') {
       points.push({
         role: mark.role,

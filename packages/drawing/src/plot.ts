@@ -25,6 +25,7 @@ export interface LineMark {
   slopes?: ArrayLike<number>;
   /** px; the role's own width when absent. */
   width?: number;
+  dashed?: boolean;
 }
 
 export interface PointsMark {

@@ -1,9 +1,9 @@
 import { rasterizeCells } from './cells.ts';
-import type { Geometry, PointsGeometry } from './layout.ts';
+import type { Geometry, LineGeometry, PointsGeometry } from './layout.ts';
 import { layoutPlot } from './layout.ts';
 import { type Palette, paper, roleStyles } from './palette.ts';
 import { round } from './path.ts';
-import type { Plot, Role, Size } from './plot.ts';
+import type { Plot, Size } from './plot.ts';
 import { base64, encodePng } from './png.ts';
 import { rampColors } from './ramp.ts';
 import type { TextRun } from './symbol.ts';
@@ -41,7 +41,7 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
     `<rect width="${size.width}" height="${size.height}" fill="${palette.ground}"/>`,
     ...geometry.cells.map((cells) => cellsSvg(geometry, cells, palette)),
     '<g clip-path="url(#data)" fill="none" stroke-linejoin="round">',
-    ...geometry.lines.map((line) => `<path d="${line.path}"${pen(line.role, palette, line.width)}/>`),
+    ...geometry.lines.map((line) => `<path d="${line.path}"${pen(line, palette)}/>`),
     '</g>',
     ...geometry.rules.map((rule) => {
       const [x1, y1] = rule.from;
@@ -68,10 +68,9 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
 /** A word stands beside its rule, a mark of failure over it. */
 export const labelShift = { start: 5, middle: 0, end: -5 };
 
-const pen = (role: Role, palette: Palette, width?: number) => {
-  const style = roleStyles[role];
-  const dash = style.dash ? ` stroke-dasharray="${style.dash}"` : '';
-  return ` stroke="${palette[style.color]}" stroke-width="${width ?? style.width}"${dash}`;
+const pen = (line: LineGeometry, palette: Palette) => {
+  const dash = line.dash ? ` stroke-dasharray="${line.dash}"` : '';
+  return ` stroke="${palette[roleStyles[line.role].color]}" stroke-width="${line.width}"${dash}`;
 };
 
 const metadata = (entries: Record<string, string>) =>

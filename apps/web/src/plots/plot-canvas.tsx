@@ -1,4 +1,4 @@
-import { emptyStep, type Geometry, rampColors, rampSteps, rasterizeCells, roleStyles } from '@nightcone/drawing';
+import { emptyStep, type Geometry, rampColors, rampSteps, rasterizeCells } from '@nightcone/drawing';
 import { useLayoutEffect, useRef } from 'react';
 import { type Theme, useTheme } from '../lib/theme.ts';
 import { readColor, readGround } from './role-colors.ts';
@@ -61,10 +61,9 @@ function drawMarks(context: CanvasRenderingContext2D, geometry: Geometry, canvas
   context.clip();
   context.lineJoin = 'round';
   for (const line of geometry.lines) {
-    const style = roleStyles[line.role];
     context.strokeStyle = readColor(canvas, line.role);
-    context.lineWidth = line.width ?? style.width;
-    context.setLineDash(style.dash ? style.dash.split(' ').map(Number) : []);
+    context.lineWidth = line.width;
+    context.setLineDash(line.dash ? line.dash.split(' ').map(Number) : []);
     context.stroke(new Path2D(line.path));
   }
   context.setLineDash([]);

@@ -1,4 +1,4 @@
-import { type Geometry, labelShift, markPath, type PointsGeometry, roleStyles } from '@nightcone/drawing';
+import { type Geometry, labelShift, markPath, type PointsGeometry } from '@nightcone/drawing';
 import { memo, useId } from 'react';
 import { numbered } from './numbered.ts';
 import { roleColor } from './role-colors.ts';
@@ -19,8 +19,8 @@ export const PlotMarks = memo(function PlotMarks({ geometry }: { geometry: Geome
             key={key}
             d={line.path}
             stroke={roleColor(line.role)}
-            strokeWidth={line.width ?? roleStyles[line.role].width}
-            strokeDasharray={roleStyles[line.role].dash ?? undefined}
+            strokeWidth={line.width}
+            strokeDasharray={line.dash ?? undefined}
           />
         ))}
       </g>

@@ -27,8 +27,8 @@ function statesOf(data: ResultData): { row: number; from: number; to: number }[]
 }
 
 /**
- * Densities across the width of all levels at one k, each standing on its energy: sublattice A solid, B dashed, one
- * common scale, so that heights compare.
+ * Densities across the width of all levels at one k, each standing on its energy: sublattice A solid, B dashed, each drawn
+ * to the same height.
  */
 export function buildRibbonDensity(data: ResultData, state = 0): BuiltPlot {
   const across = Array.from(need(data, 'positionNm').values, Number);
@@ -42,38 +42,33 @@ export function buildRibbonDensity(data: ResultData, state = 0): BuiltPlot {
     (p, q) => (energies[p] as number) - (energies[q] as number),
   );
   const spacing = typicalSpacing(levels.map((level) => energies[level] as number));
-  let most = 0;
-  for (const level of levels)
-    for (let i = 0; i < n; i++) most = Math.max(most, a[level * n + i] as number, b[level * n + i] as number);
-  const lift = most > 0 ? (0.9 * spacing) / most : 0;
-  const curve = (values: ArrayLike<number>, level: number) =>
-    across.map((_, i) => (energies[level] as number) + lift * (values[level * n + i] as number));
+  // an edge state is many times higher than a state of the bulk: each level has a height of its own
+  const lifts = new Map(
+    levels.map((level) => {
+      const most = Math.max(...[a, b].flatMap((values) => across.map((_, i) => values[level * n + i] as number)));
+      return [level, most > 0 ? (0.9 * spacing) / most : 0];
+    }),
+  );
+  const height = (values: ArrayLike<number>, level: number, i: number) =>
+    (energies[level] as number) + (lifts.get(level) ?? 0) * (values[level * n + i] as number);
+  const curve = (values: ArrayLike<number>, level: number) => across.map((_, i) => height(values, level, i));
   const marks: Mark[] = levels.flatMap((level): Mark[] => [
     { kind: 'rule', role: 'closed', across: 'y', at: energies[level] as number },
     { kind: 'line', role: 'ink', x: across, y: curve(a, level), width: 1.4 },
-    { kind: 'line', role: 'other', x: across, y: curve(b, level), width: 1.4 },
+    { kind: 'line', role: 'ink', x: across, y: curve(b, level), width: 1.4, dashed: true },
   ]);
   const [low, high] = rangeOf([levels.map((level) => energies[level] as number)], [-0.1, 0.1], 0);
   const unit = need(data, 'densityA').unit;
   return {
     plot: {
-      caption: `Density across the width of ${levels.length} levels at ${densityStates(data)[state] ?? 'one k'}, each on its energy.`,
+      caption: `Density across the width of ${levels.length} levels at ${densityStates(data)[state] ?? 'one k'}, each on its energy and to a height of its own; sublattice A solid, B dashed.`,
       x: { symbol: 'u', unit: 'nm', domain: domainOf(across) },
       y: { symbol: 'E', unit: 'eV', domain: [low - 0.4 * spacing, high + 1.1 * spacing] },
       marks,
-      key: [
-        { role: 'ink', label: 'on sublattice A', mark: 'line' },
-        { role: 'other', label: 'on sublattice B', mark: 'line' },
-      ],
     },
     targets: {
       x: levels.flatMap(() => across),
-      y: levels.flatMap((level) =>
-        across.map(
-          (_, i) =>
-            (energies[level] as number) + lift * Math.max(a[level * n + i] as number, b[level * n + i] as number),
-        ),
-      ),
+      y: levels.flatMap((level) => across.map((_, i) => Math.max(height(a, level, i), height(b, level, i)))),
       describe(i) {
         const at = (levels[Math.floor(i / n)] as number) * n + (i % n);
         return {
