@@ -1,7 +1,7 @@
 import type { Night } from '@nightcone/contracts';
 import { formatClock, formatUncertainty } from '../lib/format-time.ts';
 import { NightBarMark } from './night-bar.tsx';
-import { nightScale, placeLane, slotHeight } from './night-layout.ts';
+import { nightScale, type PlacedBar, placeLane, slotHeight } from './night-layout.ts';
 import { Hours, NowLine, TwilightBand } from './night-sky.tsx';
 import { NightText } from './night-text.tsx';
 import { Loading, ProblemNote } from './problem-note.tsx';
@@ -91,7 +91,7 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
           end={night.myEnd}
           timeZone={night.timeZone}
           scale={scale}
-          top={mine.foot - mine.height}
+          top={mine.foot - lastTop(mine.bars, scale.x(night.myEnd.at))}
           narrow={narrow}
         />
       ) : null}
@@ -99,6 +99,15 @@ function Drawing({ night, now, width }: { night: Night; now: number; width: numb
       <NowLine night={night} scale={scale} now={now} labelY={14} from={bandY - 3} to={bottom} word={!narrow} />
     </svg>
   );
+}
+
+/** Height of the bar that ends at x, where the whisker stands. */
+function lastTop(bars: readonly PlacedBar[], x: number): number {
+  const nearest = bars.reduce<PlacedBar | undefined>((best, bar) => {
+    const distance = (each: PlacedBar) => Math.abs(each.x + each.width - x);
+    return best === undefined || distance(bar) < distance(best) ? bar : best;
+  }, undefined);
+  return nearest ? nearest.offset + nearest.height : 0;
 }
 
 /** As wide as the estimate is uncertain, above the bar of one's last job. */

@@ -1,4 +1,5 @@
-import { formatQuantity, formatSmall, formatWithError } from '../lib/format-quantity.ts';
+import { formatQuantity as formatWithError } from '@nightcone/drawing';
+import { formatSmall } from '../lib/format-quantity.ts';
 
 /** A number with unit, sensible prefix and error: `36.302(4) meV`. */
 export function Quantity({
@@ -13,10 +14,9 @@ export function Quantity({
   /** Sizes of errors and residuals: two figures and a power of ten. */
   small?: boolean;
 }) {
-  const shown = small
-    ? formatSmall(value, unit)
-    : error === undefined
-      ? formatQuantity(value, unit)
-      : formatWithError(value, error, unit);
-  return <span className="num whitespace-nowrap">{shown.text}</span>;
+  return (
+    <span className="num whitespace-nowrap">
+      {small ? formatSmall(value, unit) : formatWithError(value, unit, error ?? null)}
+    </span>
+  );
 }

@@ -1,12 +1,12 @@
 import { describe, expect, test } from 'vitest';
 import { cleanHash, shortHash } from './format-hash.ts';
-import { formatBytes, formatCount, formatQuantity, formatSmall, formatWithError, plural } from './format-quantity.ts';
+import { formatBytes, formatCount, formatQuantity, formatSmall, plural } from './format-quantity.ts';
 import { formatClock, formatCpu, formatDate, formatExact, formatMoment, formatUncertainty } from './format-time.ts';
 
 describe('quantities', () => {
   test.each([
     [0.036302, 'eV', '36.302 meV'],
-    [-0.5751, 'eV nm', '−575.1 meV nm'],
+    [-0.5751, 'eV nm', '−0.5751 eV nm'],
     [100.1, 'nm', '100.1 nm'],
     [0.142, 'nm', '0.142 nm'],
     [12, 'T', '12 T'],
@@ -15,31 +15,12 @@ describe('quantities', () => {
     [0.86, '1/nm', '0.86 1/nm'],
     [8e-13, 'eV', '8e−13 eV'],
   ])('%d %s reads %s', (value, unit, text) => {
-    expect(formatQuantity(value, unit).text).toBe(text);
-  });
-
-  test.each([
-    [0.0363021, 4e-6, 'eV', '36.302(4) meV'],
-    [0.0363021, 3.1e-6, 'eV', '36.302(4) meV'],
-    [0.0363021, 9.5e-6, 'eV', '36.30(1) meV'],
-    [1234, 30, '', '1230(30)'],
-    [-0.226406, 4e-6, 'eV', '−226.406(4) meV'],
-    [0, 2e-9, 'eV', '0(2) neV'],
-  ])('%d with error %d %s reads %s: the error is rounded up', (value, error, unit, text) => {
-    expect(formatWithError(value, error, unit).text).toBe(text);
-  });
-
-  test('a closed form, right to its last bit, does not list its bits', () => {
-    expect(formatWithError(0.2196322448248183, 4e-16, 'eV').text).toBe('219.632245 meV');
-  });
-  test('a number without an error claims none', () => {
-    expect(formatWithError(0.1, undefined, 'eV').text).toBe('100 meV');
-    expect(formatWithError(0.1, 0, 'eV').text).toBe('100 meV');
+    expect(formatQuantity(value, unit)).toBe(text);
   });
 
   test('sizes of errors have two figures', () => {
-    expect(formatSmall(3.14e-13, 'eV').text).toBe('3.1e−13 eV');
-    expect(formatSmall(0, 'eV').text).toBe('0 eV');
+    expect(formatSmall(3.14e-13, 'eV')).toBe('3.1e−13 eV');
+    expect(formatSmall(0, 'eV')).toBe('0 eV');
   });
 
   test('counts and bytes', () => {

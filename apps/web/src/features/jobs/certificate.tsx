@@ -23,10 +23,10 @@ export function CertificateEntry({ model, certificate }: { model: string; certif
         rows={Object.entries(certificate.numbers).map(([name, value]) => {
           const unit = units.get(name) ?? '';
           const text = sizeOfError.test(name)
-            ? formatSmall(value, unit).text
+            ? formatSmall(value, unit)
             : unit === '' && Number.isInteger(value)
               ? formatCount(value)
-              : formatQuantity(value, unit).text;
+              : formatQuantity(value, unit);
           return { key: name, name: numberWords(name), value: text };
         })}
       />
@@ -73,9 +73,7 @@ export function ChecksEntry({ model, certificate }: { model: string; certificate
                     </span>
                   </th>
                   <td className="num whitespace-nowrap py-[5px] pr-3 text-right">
-                    {check.expected === 0
-                      ? formatSmall(check.computed, unit).text
-                      : formatQuantity(check.computed, unit).text}
+                    {check.expected === 0 ? formatSmall(check.computed, unit) : formatQuantity(check.computed, unit)}
                   </td>
                   <td className="num whitespace-nowrap py-[5px] text-right text-ink3">
                     {formatNumber(check.expected)}

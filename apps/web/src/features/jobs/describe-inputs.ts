@@ -45,7 +45,7 @@ function describe(field: Field, value: Json | undefined, pointer: string): Input
 /** One value in words: `0.142 nm`, `0 … 20 T / 201`, `K, K′`. */
 export function valueText(field: Pick<Field, 'type'> & { unit?: string }, value: Json): string {
   const unit = field.unit ?? '';
-  if (typeof value === 'number') return formatQuantity(value, unit, 12).text;
+  if (typeof value === 'number') return formatQuantity(value, unit, 12);
   if (value === null) return 'none';
   if (typeof value === 'boolean') return value ? 'yes' : 'no';
   if (typeof value === 'string') return value.length === 64 ? value.slice(0, 12) : (valleyNames[value] ?? value);

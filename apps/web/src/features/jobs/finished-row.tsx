@@ -2,6 +2,7 @@ import type { JobView } from '@nightcone/contracts';
 import { lazy, Suspense, useLayoutEffect, useRef, useState } from 'react';
 import { Loading } from '../../components/problem-note.tsx';
 import { SheetRow } from '../../components/sheet.tsx';
+import { besideSheet, useMedia } from '../../components/use-media.ts';
 import type { Readout } from '../../plots/built-plot.ts';
 import { SymbolText } from '../../plots/symbol-text.tsx';
 
@@ -16,11 +17,12 @@ const halfLine = 14;
 export function FinishedRow({ job }: { job: JobView }) {
   const [readout, setReadout] = useState<Readout | null>(null);
   const sheet = useRef<HTMLDivElement>(null);
+  const beside = useMedia(besideSheet);
   return (
     <SheetRow margin={<ReadoutZone readout={readout} sheet={sheet} />}>
       <div ref={sheet} className="min-h-130">
         <Suspense fallback={<Loading what="the plot" />}>
-          <ResultPlot job={job} onReadout={setReadout} reach={reach} />
+          <ResultPlot job={job} onReadout={setReadout} reach={beside ? reach : 0} />
         </Suspense>
       </div>
     </SheetRow>

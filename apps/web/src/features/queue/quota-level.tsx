@@ -95,7 +95,7 @@ export function QuotaLevel({ quota, now }: { quota: Quota; now: number }) {
         </g>
       </svg>
       <p className="text-ink2 text-small">
-        {formatCpu(quota.usedMs)} used, {formatCpu(quota.reservedMs)} reserved, {formatCpu(remaining(quota))} left; at
+        <Cpu ms={quota.usedMs} /> used, <Cpu ms={quota.reservedMs} /> reserved, <Cpu ms={remaining(quota)} /> left; at
         most {quota.maxSlots} slots at once.
       </p>
     </div>
@@ -107,5 +107,7 @@ function inUnitOf(ms: number, grantedMs: number): string {
   const { value } = cpuParts(ms, cpuParts(grantedMs).unit);
   return ms > 0 && Number(value) === 0 ? '< 0.1' : value;
 }
+
+const Cpu = ({ ms }: { ms: number }) => <span className="whitespace-nowrap">{formatCpu(ms)}</span>;
 
 const remaining = (quota: Quota) => Math.max(0, quota.grantedMs - quota.usedMs - quota.reservedMs);

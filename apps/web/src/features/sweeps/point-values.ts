@@ -36,7 +36,7 @@ export function pointWords(names: readonly AxisName[], values: SweepPoint['value
 }
 
 export function valueWords(value: Json, unit: string): string {
-  if (typeof value === 'number') return formatQuantity(value, unit, 8).text;
+  if (typeof value === 'number') return formatQuantity(value, unit, 8);
   if (typeof value === 'string') return value;
   if (typeof value === 'object' && value !== null && 'kind' in value) return String(value.kind);
   return JSON.stringify(value);
