@@ -4,6 +4,7 @@ import { Database } from './database.ts';
 import { errorText } from './error-text.ts';
 import { KernelStore } from './features/kernels/kernel-store.ts';
 import type { ChunkRun } from './features/queue/chunk-run.ts';
+import { ChunkSource } from './features/queue/chunk-source.ts';
 import { runSlot } from './features/queue/run-slot.ts';
 import { TableStore } from './features/tables/table-store.ts';
 import { describeWorker } from './features/workers/describe-worker.ts';
@@ -31,6 +32,7 @@ export class ComputeWorker {
   readonly #threads: ThreadPool;
   readonly #database: Database;
   readonly #kernels: KernelStore;
+  readonly #loadedKernels = new Set<string>();
   readonly #wake = new WakeSignal();
   readonly #runs = new Set<ChunkRun>();
   readonly #stopping = new AbortController();
@@ -46,7 +48,13 @@ export class ComputeWorker {
     this.#log = log;
     this.#threads = new ThreadPool({ size: slots, entry: threadEntry });
     this.#database = new Database(databaseUrl, this.#onDatabaseError);
-    this.#kernels = new KernelStore((digest) => this.#database.kernelBytes(digest));
+    this.#kernels = new KernelStore(
+      (digest) => this.#database.kernelBytes(digest),
+      (digest) => {
+        this.#loadedKernels.add(digest);
+        this.#tellKernels();
+      },
+    );
   }
 
   async start(): Promise<void> {
@@ -64,15 +72,19 @@ export class ComputeWorker {
     const queue = new Queue({ connectionString: this.#databaseUrl, worker, onError: this.#onDatabaseError });
     this.#queue = queue;
     await queue.start();
+    this.#tellKernels();
     queue.listen((message) => this.#hear(message));
     const tables = new TableStore((digest) => this.#database.table(digest));
     const jobOf = jobInputs(this.#kernels, tables);
+    const source = new ChunkSource(queue);
+    for (const thread of this.#threads.threads) thread.prepare();
     this.#slots = this.#threads.threads.map((thread, number) =>
       runSlot({
         queue,
+        source,
         thread,
         // One slot of several is kept for what is quickly done, so that long parts never fill everything.
-        offer: { express: number === 1, memoryBytes: worker.memoryBytes / worker.slots },
+        express: number === 1,
         jobOf,
         wake: this.#wake,
         runs: this.#runs,
@@ -112,6 +124,10 @@ export class ComputeWorker {
   readonly #onDatabaseError = (error: Error): void => {
     this.#log.warn({ reason: errorText(error) }, 'trouble with the database');
   };
+
+  #tellKernels(): void {
+    if (this.#loadedKernels.size > 0) this.#queue?.noteKernels([...this.#loadedKernels]).catch(this.#onDatabaseError);
+  }
 
   async #measureSpeed(): Promise<number> {
     const digest = await this.#database.currentKernel();

@@ -30,6 +30,8 @@ export interface Chunk {
   submissionId: string;
   /** Reference CPU milliseconds after which the slot stops at the next end of a task and finishes the chunk. */
   budgetMs: number;
+  /** Peak memory of one of its tasks. */
+  memoryBytes: number;
   /** In the order to be computed. Never empty. */
   tasks: Task[];
 }

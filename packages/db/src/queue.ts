@@ -9,7 +9,7 @@ import { closeChunk, closeDeadChunk, dropLease, reapLeases } from './queries/que
 import { cutChunk, type SlotOffer } from './queries/queue/cut-chunk.ts';
 import { readPayloads } from './queries/queue/read-payloads.ts';
 import { recordParts } from './queries/queue/record-parts.ts';
-import { beatWorker, mayWork, registerWorker, stopWorker } from './queries/workers/register-worker.ts';
+import { beatWorker, mayWork, noteKernels, registerWorker, stopWorker } from './queries/workers/register-worker.ts';
 import type { Chunk, Heartbeat, Order, PartRecord, Task, WorkerDescription } from './queue-types.ts';
 import { isTransient, retry } from './retry.ts';
 
@@ -216,6 +216,11 @@ export class Queue {
       this.#onError(error as Error);
       return 0;
     }
+  }
+
+  /** Tells which kernels this process has loaded. */
+  noteKernels(digests: readonly string[]): Promise<void> {
+    return this.#repeat(() => noteKernels(this.#pool, this.worker.id, digests));
   }
 
   /** Messages until the queue is stopped; `connected` first and after every loss of the connection. */

@@ -49,12 +49,17 @@ export class ComputeThread {
     return this.#control.cpuMs;
   }
 
-  run(tasks: ThreadTask[], listener: BatchListener): Promise<BatchEnd> {
+  /** Starts the thread before it is needed. */
+  prepare(): void {
+    this.#started();
+  }
+
+  run(tasks: ThreadTask[], listener: BatchListener, { keepsKernel = true } = {}): Promise<BatchEnd> {
     if (this.#running) throw new Error('this thread has a batch in hand');
     this.#control.reset();
     return new Promise((resolve) => {
       this.#running = { listener, resolve };
-      this.#started().postMessage({ type: 'batch', tasks } satisfies Batch, payloadBuffers(tasks));
+      this.#started().postMessage({ type: 'batch', tasks, keepsKernel } satisfies Batch, payloadBuffers(tasks));
     });
   }
 

@@ -39,7 +39,7 @@ function run(tasks: ThreadTask[]): Run {
   return { end, outcomes, begun };
 }
 
-describe('a compute thread', () => {
+describe('a compute thread', { timeout: 20_000 }, () => {
   it('computes whole jobs, parts of a job and assemblies', async () => {
     const cut = jobOf('cut', { slices: 3 });
     const { end, outcomes } = run([

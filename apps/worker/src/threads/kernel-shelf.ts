@@ -20,7 +20,7 @@ export class KernelShelf {
     return instance;
   }
 
-  /** After a trap nothing is known of the instance's memory. */
+  /** After a trap nothing is known of the instance's memory; after a large job it is too much to keep. */
   discard(digest: string): void {
     this.#instances.delete(digest);
     this.#open = undefined;

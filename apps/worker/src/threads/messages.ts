@@ -38,6 +38,8 @@ export type Outcome = { id: number; cpuMs: number } & (
 export interface Batch {
   type: 'batch';
   tasks: ThreadTask[];
+  /** The memory of a kernel never shrinks: after large jobs its instance is given up. */
+  keepsKernel: boolean;
 }
 
 export type ThreadReport =

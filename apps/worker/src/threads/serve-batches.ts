@@ -64,6 +64,7 @@ export function serveBatches(port: MessagePort, control: ControlBlock, host: Ker
     startCpuMs = clock.readMs();
     outbox = new Outbox(port, clock);
     const end = (message: ThreadReport) => {
+      if (!batch.keepsKernel) for (const { job } of batch.tasks) shelf.discard(job.kernel);
       outbox?.post();
       report(message);
     };

@@ -10,7 +10,11 @@ export class KernelUnavailable extends Error {
 export class KernelStore {
   readonly #kernels = new RecentMap<string, Promise<LoadedKernel>>(8);
 
-  constructor(private readonly fetchBytes: (digest: string) => Promise<Uint8Array | undefined>) {}
+  constructor(
+    private readonly fetchBytes: (digest: string) => Promise<Uint8Array | undefined>,
+    /** Told every digest that has been loaded. */
+    private readonly onLoaded: (digest: string) => void = () => {},
+  ) {}
 
   load(digest: string): Promise<LoadedKernel> {
     const atHand = this.#kernels.get(digest);
@@ -28,6 +32,7 @@ export class KernelStore {
     if (kernel.digest !== digest) {
       throw new KernelUnavailable(`the stored bytes of kernel ${digest} have the SHA-256 ${kernel.digest}`);
     }
+    this.onLoaded(digest);
     return kernel;
   }
 }

@@ -4,6 +4,9 @@ import type { BatchEnd, ComputeThread } from '../../threads/compute-thread.ts';
 import type { Outcome, ThreadJob, ThreadTask } from '../../threads/messages.ts';
 import { Recorder } from './recorder.ts';
 
+/** A kernel that may have grown beyond this is not kept for the next chunk. */
+const keptKernelBytes = 256 * 2 ** 20;
+
 export interface ChunkRunOptions {
   chunk: Chunk;
   thread: ComputeThread;
@@ -76,13 +79,15 @@ export class ChunkRun {
       for (const batch of batches(this.chunk.tasks)) {
         const tasks = await this.#prepare(batch);
         if (this.#order !== 'go' || this.#stopped) break;
-        const end = await this.options.thread.run(tasks, {
-          outcomes: (outcomes) => this.#hear(outcomes),
-          progress: (_task, fraction) => {
+        const listener = {
+          outcomes: (outcomes: Outcome[]) => this.#hear(outcomes),
+          progress: (_task: number, fraction: number) => {
             this.#taskFraction = fraction;
             this.#keepBudget();
           },
-        });
+        };
+        const keepsKernel = this.chunk.memoryBytes <= keptKernelBytes;
+        const end = await this.options.thread.run(tasks, listener, { keepsKernel });
         this.#earlierCpuMs += this.options.thread.cpuMs;
         if (end.kind !== 'done') {
           this.#note(end);

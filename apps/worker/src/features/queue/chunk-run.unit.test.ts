@@ -51,7 +51,7 @@ function fakeQueue(orders: (Order | Error)[] = []) {
 }
 
 function start(queue: ReturnType<typeof fakeQueue>, tasks: Task[], budgetMs = 4000) {
-  const chunk: Chunk = { id: 'c', attempt: 1, submissionId: 's', budgetMs, tasks };
+  const chunk: Chunk = { id: 'c', attempt: 1, submissionId: 's', budgetMs, memoryBytes: 1, tasks };
   return new ChunkRun({
     chunk,
     thread,
@@ -65,7 +65,7 @@ function start(queue: ReturnType<typeof fakeQueue>, tasks: Task[], budgetMs = 40
 
 const busy = (slices: number): FakeParameters => ({ slices, acts: new Array(slices).fill('work-20-ms') });
 
-describe('one attempt at a chunk', () => {
+describe('one attempt at a chunk', { timeout: 20_000 }, () => {
   it('records results, payloads, assemblies and refusals, then finishes', async () => {
     const queue = fakeQueue();
     const run = start(queue, [
@@ -97,8 +97,7 @@ describe('one attempt at a chunk', () => {
 
   it('drops a running slice when the answer to a record is cancel', async () => {
     const queue = fakeQueue(['cancel']);
-    // The first task lasts longer than the second that may pass before a record.
-    const run = start(queue, [wholeTask(0, busy(60)), wholeTask(1, { slices: 1, acts: ['spin'] })]);
+    const run = start(queue, [wholeTask(0, busy(4)), wholeTask(1, { slices: 1, acts: ['spin'] })]);
     await run.compute();
     await run.settle();
     expect(queue.records.map(({ index }) => index)).toEqual([0]);
@@ -107,7 +106,7 @@ describe('one attempt at a chunk', () => {
 
   it('writes nothing more once its lease is lost', async () => {
     const queue = fakeQueue(['lost']);
-    const run = start(queue, [wholeTask(0, busy(60)), wholeTask(1, { slices: 1, acts: ['spin'] })]);
+    const run = start(queue, [wholeTask(0, busy(4)), wholeTask(1, { slices: 1, acts: ['spin'] })]);
     await run.compute();
     expect(await run.settle()).toBeUndefined();
     expect(queue.records).toEqual([]);
@@ -137,7 +136,7 @@ describe('one attempt at a chunk', () => {
 
   it('ends a slice that never ends when the worker stops', async () => {
     const queue = fakeQueue();
-    const run = start(queue, [wholeTask(0, busy(60)), wholeTask(1, { slices: 1, acts: ['spin'] })]);
+    const run = start(queue, [wholeTask(0, busy(4)), wholeTask(1, { slices: 1, acts: ['spin'] })]);
     const computed = run.compute();
     await queue.recorded;
     run.stop('the worker stops');

@@ -1,17 +1,20 @@
-import type { Chunk, Queue, SlotOffer, Task } from '@nightcone/db/queue';
+import type { Chunk, Queue, Task } from '@nightcone/db/queue';
 import type { Logger } from 'pino';
 import { errorText } from '../../error-text.ts';
 import type { ComputeThread } from '../../threads/compute-thread.ts';
 import type { ThreadJob } from '../../threads/messages.ts';
 import type { WakeSignal } from '../../wake-signal.ts';
 import { ChunkRun } from './chunk-run.ts';
+import type { ChunkSource } from './chunk-source.ts';
 
 const pollMs = 2000;
 
 export interface SlotOptions {
   queue: Queue;
+  source: ChunkSource;
   thread: ComputeThread;
-  offer: SlotOffer;
+  /** This slot takes only what is quickly done. */
+  express: boolean;
   jobOf(task: Task): Promise<ThreadJob>;
   wake: WakeSignal;
   /** Attempts of the whole process that have not ended. */
@@ -21,7 +24,17 @@ export interface SlotOptions {
 }
 
 /** Takes and computes chunks until the worker stops. While one is being recorded the next one is fetched and begun. */
-export async function runSlot({ queue, thread, offer, jobOf, wake, runs, stopping, log }: SlotOptions): Promise<void> {
+export async function runSlot({
+  queue,
+  source,
+  thread,
+  express,
+  jobOf,
+  wake,
+  runs,
+  stopping,
+  log,
+}: SlotOptions): Promise<void> {
   let settling: Promise<void> | undefined;
 
   async function settle(run: ChunkRun): Promise<void> {
@@ -47,13 +60,14 @@ export async function runSlot({ queue, thread, offer, jobOf, wake, runs, stoppin
     const run = new ChunkRun({ chunk, thread, queue, jobOf });
     runs.add(run);
     await run.compute();
+    source.release(chunk);
     await settling;
     settling = settle(run);
   }
 
   async function next(): Promise<Chunk | null> {
     try {
-      return await queue.next(offer);
+      return await source.next(express);
     } catch (error) {
       log.error({ reason: errorText(error) }, 'no work could be taken');
       return null;

@@ -30,3 +30,8 @@ export async function mayWork(client: ClientBase, id: string): Promise<boolean> 
   const { rows } = await client.query<{ may: boolean }>('select queue.may_work($1) as may', [id]);
   return rows[0]?.may === true;
 }
+
+/** Kernels that a process has loaded, for the page of workers. */
+export async function noteKernels(pool: Pool, id: string, digests: readonly string[]): Promise<void> {
+  await pool.query('update workers set kernel_digests = $2 where id = $1', [id, digests]);
+}

@@ -1,0 +1,1 @@
+export { ComputeWorker, type WorkerOptions } from './worker.ts';
