@@ -41,7 +41,7 @@ function fingerprint(paths) {
     if (!stat) return;
     if (stat.isDirectory()) {
       for (const name of fs.readdirSync(file).sort()) {
-        if (name !== 'node_modules' && name !== 'build' && name !== 'dist') visit(path.join(file, name));
+        if (name !== 'node_modules' && name !== 'dist') visit(path.join(file, name));
       }
     } else
       hash
