@@ -11,7 +11,7 @@ import { sweepProgress } from './sweep-state.ts';
 const refreshes = ['getSweep', 'listSweepPoints', 'listSubmissions', 'getNight', 'getQuota'] as const;
 
 /** Pause, go on, cancel, put broken-off points back, vary. */
-export function SweepActions({ sweep, firstHash }: { sweep: Sweep; firstHash: string | undefined }) {
+export function SweepActions({ sweep }: { sweep: Sweep }) {
   const { account } = useSession();
   const { state, id, mine } = sweep.submission;
   const pause = useAction('pauseSubmission', { refreshes });
@@ -41,8 +41,8 @@ export function SweepActions({ sweep, firstHash }: { sweep: Sweep; firstHash: st
           Put {plural(brokenOff, 'point')} back
         </Button>
       ) : null}
-      {account?.role !== 'reviewer' && firstHash ? (
-        <ButtonLink to={`/question/${sweep.model}?sweep=${sweep.id}&from=${firstHash}`} look="main">
+      {account?.role !== 'reviewer' ? (
+        <ButtonLink to={`/question/${sweep.model}?sweep=${sweep.id}`} look="main">
           Vary this sweep
         </ButtonLink>
       ) : null}

@@ -57,7 +57,7 @@ function SweepSheet({ sweep }: { sweep: Sweep }) {
           </span>
         </>
       }
-      actions={<SweepActions sweep={sweep} firstHash={points.data?.rows[0]?.jobHash} />}
+      actions={<SweepActions sweep={sweep} />}
     >
       <NightStrip />
       <SheetRow

@@ -1,4 +1,4 @@
-import type { JobView } from '@nightcone/contracts';
+import type { JobView, Sweep } from '@nightcone/contracts';
 import type { ModelDefinition } from '@nightcone/models';
 import { useMemo } from 'react';
 import { useSearchParams } from 'react-router-dom';
@@ -20,18 +20,21 @@ export interface QuestionSource {
   problem: string | null;
 }
 
-/** Where a form's first texts come from: an example, another job, a server's draft, this browser's draft, the defaults. */
+/** Where a form's first texts come from: an example, another job or sweep, a server's draft, this browser's draft, the defaults. */
 export function useQuestionSource(model: ModelDefinition, pasted: PastedQuestion | null): QuestionSource {
   const [search] = useSearchParams();
   const exampleId = search.get('example');
   const from = search.get('from');
+  const sweepId = search.get('sweep');
   const draftId = search.get('draft');
   const job = useApi('getJob', { params: { hash: from ?? '' } }, { enabled: from !== null });
+  const sweep = useApi('getSweep', { params: { id: sweepId ?? '' } }, { enabled: sweepId !== null });
   const draft = useApi('getDraft', { params: { id: draftId ?? '' } }, { enabled: draftId !== null });
   return useMemo(() => {
     if (pasted?.model === model.id)
       return { texts: fillForm(model, pasted), said: 'Filled from pasted JSON.', untouched: false, problem: null };
     if (from) return fromJob(model, from, job.data, job.isError ? job.error.message : null);
+    if (sweepId) return fromSweep(model, sweep.data, sweep.isError ? sweep.error.message : null);
     if (draftId) return fromDraft(model, draft.data?.body, draft.isError ? draft.error.message : null);
     const example = exampleId ? model.examples.find(({ id }) => id === exampleId) : undefined;
     if (example)
@@ -62,6 +65,10 @@ export function useQuestionSource(model: ModelDefinition, pasted: PastedQuestion
     job.data,
     job.isError,
     job.error,
+    sweepId,
+    sweep.data,
+    sweep.isError,
+    sweep.error,
     draftId,
     draft.data,
     draft.isError,
@@ -85,6 +92,19 @@ function fromJob(
     };
   return problem
     ? { texts: fillForm(model, {}), said: '', untouched: true, problem: `The job could not be read: ${problem}` }
+    : { texts: null, said: '', untouched: true, problem: null };
+}
+
+function fromSweep(model: ModelDefinition, sweep: Sweep | undefined, problem: string | null): QuestionSource {
+  if (sweep)
+    return {
+      texts: fillForm(model, { ...(sweep.specification as unknown as Body), axes: sweep.axes }),
+      said: `Started from the sweep “${sweep.title}”.`,
+      untouched: true,
+      problem: null,
+    };
+  return problem
+    ? { texts: fillForm(model, {}), said: '', untouched: true, problem: `The sweep could not be read: ${problem}` }
     : { texts: null, said: '', untouched: true, problem: null };
 }
 
