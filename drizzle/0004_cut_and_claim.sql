@@ -1,5 +1,26 @@
 -- How work starts: a chunk is cut at the moment a slot is free, then claimed for one attempt.
 
+-- Work is paid from the week of its submission. What that week cannot pay any more goes on in the present one
+CREATE FUNCTION queue.roll_over() RETURNS void LANGUAGE plpgsql AS $$
+DECLARE
+  r record;
+  present uuid;
+BEGIN
+  FOR r IN
+    SELECT s.id, s.account_id FROM submissions s JOIN quota_balances b ON b.id = s.balance_id
+    WHERE s.state IN ('active', 'paused') AND b.week_end <= now() AND b.used_ms >= b.granted_ms ORDER BY s.id
+  LOOP
+    present := queue.balance_of(r.account_id);
+    SELECT id, balance_id, reserved_ms INTO STRICT r FROM submissions WHERE id = r.id FOR NO KEY UPDATE;
+    CONTINUE WHEN r.balance_id = present;
+    UPDATE submissions SET balance_id = present WHERE id = r.id;
+    IF r.reserved_ms > 0 THEN
+      PERFORM queue.post(r.balance_id, 'release', 0, -r.reserved_ms, 0, 'goes on in the next week', r.id),
+              queue.post(present, 'reserve', 0, r.reserved_ms, 0, 'goes on from the week before', r.id);
+    END IF;
+  END LOOP;
+END $$;
+
 -- the only gate through which work starts: cuts at most one chunk, under one lock. Its id, or null
 CREATE FUNCTION queue.cut(express boolean, memory bigint) RETURNS uuid LANGUAGE plpgsql AS $$
 DECLARE
@@ -14,6 +35,7 @@ DECLARE
 BEGIN
   PERFORM pg_advisory_xact_lock(7201);
   PERFORM queue.unpark();
+  PERFORM queue.roll_over();
   LOOP
     SELECT * INTO turn FROM queue.next_turn(express, memory);
     IF NOT FOUND THEN RETURN NULL; END IF;

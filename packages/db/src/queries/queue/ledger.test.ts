@@ -7,6 +7,7 @@ import {
   createAccount,
   createKernel,
   createTestDatabase,
+  drain,
   endRetryPauses,
   ledgerErrors,
   reapNow,
@@ -16,6 +17,7 @@ import {
   type TestDatabase,
 } from '../../../testing/index.ts';
 import type { Chunk, Queue } from '../../queue.ts';
+import { adjustQuota } from '../quotas/adjust-quota.ts';
 import { findQuota, listQuotaEntries } from '../quotas/find-quota.ts';
 import { cancelSubmission, pauseSubmission, resumeSubmission, retryBrokenOff } from './control-submission.ts';
 
@@ -178,6 +180,35 @@ test('a new week brings the grant, less what the week before was overrun by; wha
     where account_id = ${actor.accountId} and week_start = ${weekEnd.toISOString()}`);
   expect(await balanceAfter(7)).toBe(grantedMs - 5000);
   expect(await balanceAfter(14)).toBe(grantedMs);
+});
+
+test('work that its week cannot pay any more goes on in the present week, with the rest of its reservation', async () => {
+  const actor = await createAccount(database.db);
+  const { submissionId } = await submitTestSweep(database.db, actor, { kernel, numbers: [1, 2, 3, 4] });
+  const { id: old, grantedMs } = await findQuota(database.db, actor.accountId);
+  await adjustQuota(database.db, actor, { accountId: actor.accountId, ms: -grantedMs, reason: 'nothing is left' });
+  expect(await queue.next(anySlot)).toBeNull();
+  await database.db.execute(
+    sql`update quota_balances set week_start = week_start - interval '7 days', week_end = week_end - interval '7 days'`,
+  );
+  expect(await drain(queue, 100_000)).toBe(4);
+  const sides = async (id: string) =>
+    (await listQuotaEntries(database.db, id))
+      .map(({ kind, reservedMs, usedMs }) => [kind, reservedMs, usedMs])
+      .reverse();
+  expect((await sides(old)).slice(1)).toEqual([
+    ['reserve', 400, 0],
+    ['adjust', 0, 0],
+    ['release', -400, 0],
+  ]);
+  const present = await findQuota(database.db, actor.accountId);
+  expect(present).toMatchObject({ grantedMs, reservedMs: 0, usedMs: 548 });
+  expect((await sides(present.id)).slice(0, 2)).toEqual([
+    ['grant', 0, 0],
+    ['reserve', 400, 0],
+  ]);
+  const { rows } = await database.db.execute(sql`select state from submissions where id = ${submissionId}`);
+  expect(rows).toEqual([{ state: 'done' }]);
 });
 
 test('the ledger, the audit log and the settings are append-only', async () => {
