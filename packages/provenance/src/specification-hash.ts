@@ -47,8 +47,20 @@ function withoutDefaults(fields: readonly Field[], values: { [name: string]: Jso
 }
 
 /** A default may itself leave defaults out; both sides are compared without them. */
-function isDefault(type: FieldType, fallback: Json, value: Json): boolean {
-  return canonicalJson(withoutInnerDefaults(type, fallback)) === canonicalJson(withoutInnerDefaults(type, value));
+function isDefault(field: Field, fallback: Json, value: Json): boolean {
+  // Numbers, words and booleans are most of a specification, and a sweep asks for thousands of points.
+  if (typeof value !== 'object') return value === fallback;
+  return defaultText(field, fallback) === canonicalJson(withoutInnerDefaults(field, value));
+}
+
+const defaultTexts = new WeakMap<Field, string>();
+
+function defaultText(field: Field, fallback: Json): string {
+  const known = defaultTexts.get(field);
+  if (known !== undefined) return known;
+  const text = canonicalJson(withoutInnerDefaults(field, fallback));
+  defaultTexts.set(field, text);
+  return text;
 }
 
 function withoutInnerDefaults(type: FieldType, value: Json): Json {

@@ -1,8 +1,6 @@
 import { createHash } from 'node:crypto';
-import { operationsPerMs, type SpecificationInput, type SweepAxisInput } from '@nightcone/contracts';
+import type { SpecificationInput, SweepAxisInput } from '@nightcone/contracts';
 import {
-  compileExpression,
-  type Expression,
   findModel,
   type Json,
   type KernelManifest,
@@ -10,16 +8,16 @@ import {
   parseSpecification,
   planSweep,
   type Specification,
-  type SpecificationBody,
   type SweepAxis,
   sweepAxisProblems,
   sweepValues,
   type ValidityNote,
 } from '@nightcone/models';
-import { canonicalText, questionDigest } from '@nightcone/provenance';
+import { canonicalText, questionText } from '@nightcone/provenance';
 import type { FieldError } from '../refusal.ts';
 import { Refusal } from '../refusal.ts';
 import { expandAxes } from './expand-axes.ts';
+import { compileSizes } from './job-sizes.ts';
 
 export interface Question {
   specification: SpecificationInput;
@@ -51,10 +49,11 @@ export interface OpenQuestion {
   /** The complete specification of a point, or what is wrong with it. */
   specification(index: number): { ok: true; value: Specification } | { ok: false; errors: FieldError[] };
   point(index: number, specification: Specification): PlannedPoint;
-  completed(point: PlannedPoint, specification: Specification): Promise<PlannedPoint>;
+  questionDigest(specification: Specification): string;
   notes(specification: Specification): ValidityNote[];
 }
 
+const sha256 = (text: string) => createHash('sha256').update(text).digest('hex');
 const inSpecification = (field: string) => `/specification${field}`;
 
 /** Reads a question against the manifest of its kernel. Nothing is expanded before the number of points is known to fit. */
@@ -73,7 +72,7 @@ export function openQuestion(manifest: KernelManifest, kernel: string, question:
     throw new Refusal('invalid-specification', errors[0]?.message ?? 'The axes are not valid.', { errors });
   }
   const plan = planSweep(manifest, base, axes);
-  const formulas = compileFormulas(model);
+  const sizes = compileSizes(model);
   const definition = findModel(base.model);
 
   return {
@@ -95,32 +94,14 @@ export function openQuestion(manifest: KernelManifest, kernel: string, question:
       const text = canonicalText(specification);
       return {
         index,
-        hash: createHash('sha256').update(text).digest('hex'),
+        hash: sha256(text),
         values: sweepValues(axes, index),
-        ...formulas(specification),
+        ...sizes(specification),
         tables: specification.tables,
         canonicalText: text,
       };
     },
-    completed: async (point, specification) => ({
-      ...point,
-      questionDigest: await questionDigest(manifest, specification),
-    }),
+    questionDigest: (specification) => sha256(questionText(manifest, specification)),
     notes: (specification) => definition?.notes(specification) ?? [],
   };
-}
-
-function compileFormulas(model: ModelManifest) {
-  const compiled = (expression: Expression) => compileExpression(expression, model);
-  const [cost, assembleCost, slices] = [model.cost, model.assembleCost, model.sliceCount].map(compiled);
-  const [sliceBytes, assembleBytes, resultBytes] = [model.sliceBytes, model.assembleBytes, model.resultBytes].map(
-    compiled,
-  );
-  const value = (formula: typeof cost, body: SpecificationBody) => formula?.(body) ?? 0;
-  return (body: SpecificationBody) => ({
-    estimatedMs: (value(cost, body) + value(assembleCost, body)) / operationsPerMs,
-    slices: value(slices, body),
-    resultBytes: Math.ceil(value(resultBytes, body)),
-    memoryBytes: Math.ceil(Math.max(value(sliceBytes, body), value(assembleBytes, body))),
-  });
 }

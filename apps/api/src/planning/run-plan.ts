@@ -54,7 +54,11 @@ export async function runPlan(
       const refused = found.some(({ severity }) => severity === 'refuse');
       if (probes.has(index) && !refused) probeKernel(kernel, made.value, point);
       first ??= { hash: point.hash, canonicalText: point.canonicalText ?? '' };
-      points.push(full ? await question.completed(point, made.value) : { ...point, canonicalText: undefined });
+      points.push(
+        full
+          ? { ...point, questionDigest: question.questionDigest(made.value) }
+          : { ...point, canonicalText: undefined },
+      );
     }
     if (wrongPoints === 0) await control.sendBatch(points);
     if (control.stopped) return undefined;
