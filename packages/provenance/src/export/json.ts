@@ -1,5 +1,6 @@
 import type { ResultArrayData } from '@nightcone/kernel';
 import { type ArrayValues, arrayValues } from '../array-values.ts';
+import { canonicalJson } from '../canonical.ts';
 import { numberText } from './number-text.ts';
 import type { ResultRecord } from './result-record.ts';
 
@@ -8,17 +9,18 @@ const valuesPerChunk = 8192;
 /**
  * The result as one JSON object, in pieces (a large one is longer than a string may be):
  * `{ jobHash, resultDigest, kernel, specification, arrays: [{ name, dtype, shape, dims, unit, values, offsets? }],
- * certificate, notes }`. Numbers of arrays have 17 significant digits. The shape is stable: scripts depend on it.
+ * certificate, notes }`. Numbers of arrays have 17 significant digits. The shape is stable: scripts depend on it. The same
+ * result gives the same bytes, wherever its parts were kept meanwhile.
  */
 export function* jsonChunks(record: ResultRecord): Generator<string> {
   const { jobHash, resultDigest, specification, result, notes } = record;
-  const head = JSON.stringify({ jobHash, resultDigest, kernel: specification.kernel, specification });
-  yield `${head.slice(0, -1)},"arrays":[`;
+  const head = JSON.stringify({ jobHash, resultDigest, kernel: specification.kernel });
+  yield `${head.slice(0, -1)},"specification":${canonicalJson(specification)},"arrays":[`;
   for (const [i, array] of result.arrays.entries()) {
     if (i > 0) yield ',';
     yield* arrayChunks(array, result.arrays);
   }
-  yield `],"certificate":${JSON.stringify(result.certificate)},"notes":${JSON.stringify(notes)}}\n`;
+  yield `],"certificate":${canonicalJson(result.certificate)},"notes":${canonicalJson(notes)}}\n`;
 }
 
 function* arrayChunks(array: ResultArrayData, all: readonly ResultArrayData[]): Generator<string> {

@@ -1,5 +1,6 @@
 import type { KernelResult, ResultArrayData } from '@nightcone/kernel';
 import { unzipSync, Zip, ZipPassThrough } from 'fflate';
+import { canonicalJson } from '../canonical.ts';
 import { npyHeader, readNpy } from './npy.ts';
 import type { ResultRecord } from './result-record.ts';
 
@@ -11,7 +12,7 @@ const mtime = new Date(1980, 0, 2);
 
 /**
  * The result as a NumPy archive in pieces: one stored `.npy` per array and `nightcone.json` with the specification, the
- * hashes, the certificate and the notes. The same record gives the same bytes.
+ * hashes, the certificate and the notes. The same result gives the same bytes, wherever its parts were kept meanwhile.
  */
 export function* npzChunks(record: ResultRecord): Generator<Uint8Array> {
   const pieces: Uint8Array[] = [];
@@ -42,7 +43,7 @@ function* members({
   const arrays = result.arrays.map(({ bytes: _, ...rest }) => rest);
   const kernel = specification.kernel;
   const head = { jobHash, resultDigest, kernel, specification, arrays, certificate: result.certificate, notes };
-  yield [recordMember, [new TextEncoder().encode(`${JSON.stringify(head, undefined, 1)}\n`)]];
+  yield [recordMember, [new TextEncoder().encode(`${canonicalJson(head)}\n`)]];
   for (const array of result.arrays) yield [`${array.name}.npy`, [npyHeader(array), array.bytes]];
 }
 
