@@ -39,6 +39,11 @@ export class Database {
   }
 
   #patiently<T>(query: () => Promise<T>): Promise<T> {
-    return retry(query, this.onError);
+    return retry(() => query().catch(throwCause), this.onError);
   }
+}
+
+/** drizzle wraps what the driver said in the text of the statement: what matters here is the former. */
+function throwCause(error: unknown): never {
+  throw error instanceof Error && error.cause instanceof Error ? error.cause : error;
 }
