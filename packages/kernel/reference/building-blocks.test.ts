@@ -10,7 +10,7 @@ interface Parts {
   erfc(x: number): number;
   digammaImaginary(x: number, y: number): number;
   heapSort(values: number, n: number): void;
-  jacobiValues(a: number, n: number, values: number): void;
+  realJacobi(a: number, n: number, values: number): void;
   pentadiagonalToTridiagonal(n: number, d: number, e: number, f: number): void;
   openProfile(pointer: number, length: number, from: number, to: number): number;
   valueAt(u: number): number;
@@ -86,7 +86,7 @@ describe('small dense matrices', () => {
       return scatter(Math.min(row, column) * 31 + Math.max(row, column));
     });
     const at = place([...a, ...Array(n).fill(0)]);
-    parts.jacobiValues(at, n, at + 8 * n * n);
+    parts.realJacobi(at, n, at + 8 * n * n);
     const expected = new EigenvalueDecomposition(Matrix.from1DArray(n, n, a)).realEigenvalues.sort((x, y) => x - y);
     [...doubles(at + 8 * n * n, n)].forEach((value, i) => {
       // 16 ε‖A‖, ‖A‖ ≤ n

@@ -17,7 +17,7 @@ import { assemblyCost, rowCost } from "./landau-levels/cost";
 import { prepareLineShape } from "./landau-levels/line-shape";
 import { hasLevels } from "./landau-levels/monolayer";
 import { field, isBilayer, levelCount, readParameters, valleyCount } from "./landau-levels/parameters";
-import { errorsAt, fillRow, layOutRow, rowLength, validAt, wholeOffset } from "./landau-levels/row";
+import { errorsOffset, fillRow, layOutRow, rowLength, validOffset, wholeOffset } from "./landau-levels/row";
 
 const FIELDS_PER_SLICE: i32 = 16;
 
@@ -87,9 +87,9 @@ function addCertificate(rows: usize): i32 {
     const b = field.at(i);
     if (isBilayer ? b != 0 : hasLevels(b)) wanted += perField;
     for (let j = 0; j < perField; j++) {
-      if (at(row, validAt + j) == 0) continue;
+      if (at(row, validOffset + j) == 0) continue;
       found++;
-      largest = Math.max(largest, at(row, errorsAt + j));
+      largest = Math.max(largest, at(row, errorsOffset + j));
     }
     if (at(row, wholeOffset) == 0) continue;
     if (high < 0 || Math.abs(b) > Math.abs(field.at(high))) high = i;

@@ -9,8 +9,8 @@ import { Profile, profileAverage, profileIntegral, profileStatus, profileValue, 
 export { erfc } from "../functions/error-function";
 export { digammaImaginary } from "../functions/digamma";
 export { heapSort } from "../linalg/heap-sort";
-export { jacobiValues } from "../linalg/jacobi";
-export { pentadiagonalToTridiagonal } from "../linalg/pentadiagonal-to-tridiagonal";
+export { realJacobi } from "../solvers/real-jacobi";
+export { pentadiagonalToTridiagonal } from "../solvers/pentadiagonal-to-tridiagonal";
 export { levelsOnGrid } from "../models/landau-levels/monolayer-grid";
 export { bilayerLadder } from "../models/landau-levels/bilayer-ladder";
 export { bilayerAtZeroField, bilayerBlockLevels };

@@ -3,7 +3,7 @@ import { at } from "../../doubles";
 import { Axis } from "../../axis";
 import { addArray, F64, I32, U8 } from "../../result";
 import { broadening, carrier, energy, field, levelCount, levelLabel, NO_BROADENING, spinCount, valleyCount, valleySign } from "./parameters";
-import { chargeOffset, degeneracyOffset, densityOffset, energiesAt, errorsAt, fermiOffset, fermiValidOffset, fillingOffset, lengthOffset, plateauOffset, transitionOffset, transitionValidOffset, validAt, wholeOffset } from "./row";
+import { chargeOffset, degeneracyOffset, densityOffset, energiesOffset, errorsOffset, fermiOffset, fermiValidOffset, fillingOffset, lengthOffset, plateauOffset, transitionOffset, transitionValidOffset, validOffset, wholeOffset } from "./row";
 import { transitionCount, transitionFrom, transitionTo } from "./transitions";
 
 export const ARRAY_COUNT: i32 = 26;
@@ -18,9 +18,9 @@ export function writeArrays(rows: usize): void {
   labelArrays(levels);
   const perValley = valleyCount * levels;
   const all = valleyCount * spinCount * levels;
-  copySection(rows, addArray(6, F64, 4, field.count, valleyCount, spinCount, levels), energiesAt, all);
+  copySection(rows, addArray(6, F64, 4, field.count, valleyCount, spinCount, levels), energiesOffset, all);
   energiesValid(rows, addArray(7, U8, 4, field.count, valleyCount, spinCount, levels), levels);
-  copySection(rows, addArray(8, F64, 3, field.count, valleyCount, levels), errorsAt, perValley);
+  copySection(rows, addArray(8, F64, 3, field.count, valleyCount, levels), errorsOffset, perValley);
   if (broadening != NO_BROADENING) {
     copySection(rows, addArray(9, F64, 2, field.count, energy.count), densityOffset, energy.count);
     wholeFlags(rows, addArray(10, U8, 2, field.count, energy.count), energy.count);
@@ -98,7 +98,7 @@ function energiesValid(rows: usize, to: usize, levels: i32): void {
   for (let i = 0; i < field.count; i++) {
     for (let valley = 0; valley < valleyCount; valley++) {
       for (let spin = 0; spin < spinCount; spin++) {
-        for (let j = 0; j < levels; j++) store<u8>(to++, at(rowOf(rows, i), validAt + valley * levels + j) != 0 ? 1 : 0);
+        for (let j = 0; j < levels; j++) store<u8>(to++, at(rowOf(rows, i), validOffset + valley * levels + j) != 0 ? 1 : 0);
       }
     }
   }

@@ -14,7 +14,7 @@
 import { reserveF64 } from "../../arena";
 import { at, put } from "../../doubles";
 import { heapSort } from "../../linalg/heap-sort";
-import { pentadiagonalToTridiagonal } from "../../linalg/pentadiagonal-to-tridiagonal";
+import { pentadiagonalToTridiagonal } from "../../solvers/pentadiagonal-to-tridiagonal";
 import { Chain, chainCounts, newChain, sealChain } from "../../solvers/chain";
 import { blockDiagonal, blockNext, blockSecond, blockSize, blockToNext } from "./bilayer-block";
 import { ladderSquare } from "./monolayer";

@@ -14,7 +14,7 @@
 import { at, put } from "../../doubles";
 import { reserveF64 } from "../../arena";
 import { heapSort } from "../../linalg/heap-sort";
-import { jacobiValues } from "../../linalg/jacobi";
+import { realJacobi } from "../../solvers/real-jacobi";
 import { fillBlock } from "./bilayer-block";
 import { ladderSquare } from "./monolayer";
 import { bias, dimerOffset, gamma1, maxIndex, v4Ratio } from "./parameters";
@@ -37,7 +37,7 @@ function isPlain(): bool {
 function blockLevels(n: i32, sign: f64, square: f64, workspace: usize, values: usize): i32 {
   if (!isPlain()) {
     const size = fillBlock(n, sign, square, workspace);
-    jacobiValues(workspace, size, values);
+    realJacobi(workspace, size, values);
     return size;
   }
   if (n < 0) {

@@ -19,7 +19,7 @@ import { monolayerGrid } from "./monolayer-grid";
 import { monolayerLadder } from "./monolayer-ladder";
 import { chargeAt } from "./occupation";
 import { bias, broadening, carrier, dimerOffset, electricField, gamma1, GRID, isBilayer, levelCount, mass, maxIndex, method, NO_BROADENING, spinCount, spinEnergy, spinFactor, thermalEnergy, v3Ratio, v4Ratio, valleyCount, valleySign } from "./parameters";
-import { energiesAt, errorsAt, fermiOffset, fermiValidOffset, takeLevels } from "./row";
+import { energiesOffset, errorsOffset, fermiOffset, fermiValidOffset, takeLevels } from "./row";
 import { FLUX_QUANTUM } from "../../constants";
 
 /** Ladders longer than this cost more than a check may. */
@@ -35,7 +35,7 @@ function ladderScale(b: f64, size: i32): f64 {
 
 /** Level i of valley `valley` in a row, without its spin energy. */
 function listed(row: usize, b: f64, valley: i32, i: i32): f64 {
-  return at(row, energiesAt + valley * spinCount * levelCount() + i) - spinEnergy(0, b);
+  return at(row, energiesOffset + valley * spinCount * levelCount() + i) - spinEnergy(0, b);
 }
 
 /** Checks of a row whose every level is valid; `lowest` is such a row in the smallest field. */
@@ -75,7 +75,7 @@ function monolayerLadderCheck(row: usize, b: f64, ladder: usize, errors: usize):
 function gridError(row: usize): f64 {
   if (method != GRID) return 0;
   let worst = 0.0;
-  for (let i = 0; i < valleyCount * levelCount(); i++) worst = Math.max(worst, at(row, errorsAt + i));
+  for (let i = 0; i < valleyCount * levelCount(); i++) worst = Math.max(worst, at(row, errorsOffset + i));
   return worst;
 }
 

@@ -4,11 +4,11 @@
  */
 import { at, put } from "../../doubles";
 import { Chain } from "../../solvers/chain";
-import { levelsByIndex } from "../../solvers/chain-levels";
+import { levelValues } from "../../solvers/chain-levels";
 
 /** Fills values and the half widths of their proved intervals; false when the counts do not close. */
 export function provedLevels(chain: Chain, first: i32, count: i32, values: usize, errors: usize): bool {
-  if (!levelsByIndex(chain, first, count, 0, 0, values, errors)) return false;
+  if (!levelValues(chain, first, count, values, errors)) return false;
   for (let i = 0; i < count; i++) if (Math.abs(at(values, i)) <= at(errors, i)) put(values, i, 0);
   return true;
 }

@@ -11,9 +11,9 @@ import { broadening, carrier, energy, levelCount, NO_BROADENING, spinCount, spin
 import { positionOf, transitionCount, transitionFrom, transitionTo } from "./transitions";
 
 /** Offsets of the sections, in doubles. */
-export let energiesAt: i32 = 0;
-export let errorsAt: i32 = 0;
-export let validAt: i32 = 0;
+export let energiesOffset: i32 = 0;
+export let errorsOffset: i32 = 0;
+export let validOffset: i32 = 0;
 export let densityOffset: i32 = 0;
 export let chargeOffset: i32 = 0;
 export let plateauOffset: i32 = 0;
@@ -30,10 +30,10 @@ export let rowLength: i32 = 0;
 
 export function layOutRow(): void {
   const perValley = levelCount();
-  energiesAt = 0;
-  errorsAt = energiesAt + valleyCount * spinCount * perValley;
-  validAt = errorsAt + valleyCount * perValley;
-  densityOffset = validAt + valleyCount * perValley;
+  energiesOffset = 0;
+  errorsOffset = energiesOffset + valleyCount * spinCount * perValley;
+  validOffset = errorsOffset + valleyCount * perValley;
+  densityOffset = validOffset + valleyCount * perValley;
   chargeOffset = densityOffset + (broadening == NO_BROADENING ? 0 : energy.count);
   plateauOffset = chargeOffset + energy.count;
   fermiOffset = plateauOffset + energy.count;
@@ -72,9 +72,9 @@ function fillLevels(row: usize, b: f64): bool {
   const n = levelCount();
   let whole = true;
   for (let valley = 0; valley < valleyCount; valley++) {
-    const values = section(row, energiesAt + valley * spinCount * n);
-    const valid = section(row, validAt + valley * n);
-    fieldLevels(b, valleySign(valley), values, section(row, errorsAt + valley * n), valid);
+    const values = section(row, energiesOffset + valley * spinCount * n);
+    const valid = section(row, validOffset + valley * n);
+    fieldLevels(b, valleySign(valley), values, section(row, errorsOffset + valley * n), valid);
     // the second spin first: the first one overwrites what both start from
     for (let spin = spinCount - 1; spin >= 0; spin--) {
       const shift = spinEnergy(spin, b);
@@ -90,8 +90,8 @@ function fillTransitions(row: usize): void {
   const transitions = transitionCount();
   for (let valley = 0; valley < valleyCount; valley++) {
     // spin is conserved: its energy drops out
-    const values = section(row, energiesAt + valley * spinCount * n);
-    const valid = section(row, validAt + valley * n);
+    const values = section(row, energiesOffset + valley * spinCount * n);
+    const valid = section(row, validOffset + valley * n);
     for (let t = 0; t < transitions; t++) {
       const from = positionOf(transitionFrom(t));
       const to = positionOf(transitionTo(t));
@@ -106,7 +106,7 @@ function fillTransitions(row: usize): void {
 export function takeLevels(row: usize, b: f64): void {
   const all = valleyCount * spinCount * levelCount();
   const copy = reserveF64(all);
-  memory.copy(copy, section(row, energiesAt), <usize>all << 3);
+  memory.copy(copy, section(row, energiesOffset), <usize>all << 3);
   setLevels(copy, all, b, reserveF64(6 * <u64>all + 2));
 }
 

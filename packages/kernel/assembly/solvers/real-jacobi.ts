@@ -9,9 +9,9 @@
  * Accuracy  Absolute a few ε‖A‖; small eigenvalues of graded matrices better than that.
  * Cost      About 4 n³ multiplications per sweep, 4 to 6 sweeps.   Fails  never: a sweep always lowers the off-diagonal.
  */
-import { heapSort } from "./heap-sort";
+import { heapSort } from "../linalg/heap-sort";
 
-export function jacobiValues(a: usize, n: i32, values: usize): void {
+export function realJacobi(a: usize, n: i32, values: usize): void {
   const row = <usize>n << 3;
   for (let sweep = 0; sweep < 40; sweep++) {
     let off = 0.0;
