@@ -24,7 +24,8 @@ const features = [
 /** Not features: shared by all of a layer. */
 const shared: Record<string, string[]> = {
   'packages/contracts/src/features': ['common'],
-  'packages/db/src/schema': ['index', 'columns'],
+  'packages/db/src/schema': ['columns', 'idempotency'],
+  'packages/db/src/queries': ['idempotency'],
 };
 
 const folders = [

@@ -20,7 +20,7 @@ test('the migrations make exactly the schema: nothing is left to generate', () =
       JSON.stringify({
         dialect: 'postgresql',
         // drizzle-kit understands only paths relative to where it runs
-        schema: './packages/db/src/schema/*.ts',
+        schema: './packages/db/src/schema/**/*.ts',
         out: relative(at('.'), join(scratch, 'drizzle')),
         casing: 'snake_case',
       }),

@@ -1,7 +1,7 @@
 import type pg from 'pg';
 import PgBoss from 'pg-boss';
 import { createPool } from './client.ts';
-import { listen, type QueueMessage } from './queries/listen.ts';
+import { listen, type QueueMessage } from './queries/events/listen.ts';
 import { beatLeases } from './queries/queue/beat-leases.ts';
 import { claimChunk } from './queries/queue/claim-chunk.ts';
 import { cleanUp } from './queries/queue/clean-up.ts';
@@ -13,7 +13,7 @@ import { beatWorker, mayWork, noteKernels, registerWorker, stopWorker } from './
 import type { Chunk, Heartbeat, Order, PartRecord, Task, WorkerDescription } from './queue-types.ts';
 import { isTransient, retry } from './retry.ts';
 
-export type { QueueMessage } from './queries/listen.ts';
+export type { QueueMessage } from './queries/events/listen.ts';
 export type { SlotOffer } from './queries/queue/cut-chunk.ts';
 export * from './queue-types.ts';
 

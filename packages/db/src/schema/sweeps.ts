@@ -1,7 +1,7 @@
 import { index, jsonb, pgTable, text, uuid } from 'drizzle-orm/pg-core';
 import { accounts } from './accounts.ts';
 import { instant } from './columns.ts';
-import { submissions } from './queue.ts';
+import { submissions } from './queue/submissions.ts';
 
 export interface SweepDefinition {
   /** The base specification, every default written out. */

@@ -1,7 +1,7 @@
 import { and, eq, gt, sql } from 'drizzle-orm';
 import type { Db, Queryable } from '../../client.ts';
 import { accessTokens, accounts, sessions } from '../../schema/accounts.ts';
-import { channel } from '../listen.ts';
+import { channel } from '../events/listen.ts';
 import { usable } from './tokens.ts';
 
 /** The account id that the sign-in library keeps in a session. */

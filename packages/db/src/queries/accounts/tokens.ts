@@ -3,7 +3,7 @@ import { and, asc, eq, gt, isNull, lt, or, sql } from 'drizzle-orm';
 import type { Db, Queryable } from '../../client.ts';
 import { accessTokens, accounts } from '../../schema/accounts.ts';
 import { type Actor, saveAuditEntry } from '../audit.ts';
-import { channel } from '../listen.ts';
+import { channel } from '../events/listen.ts';
 
 export type TokenRow = typeof accessTokens.$inferSelect;
 

@@ -1,8 +1,9 @@
 import { and, asc, desc, eq, getTableColumns, inArray, sql } from 'drizzle-orm';
 import type { Queryable } from '../../client.ts';
-import { executionEvents, executions, jobs } from '../../schema/jobs.ts';
-import { submissionPoints, submissions } from '../../schema/queue.ts';
-import { results } from '../../schema/results.ts';
+import { executionEvents, executions } from '../../schema/jobs/executions.ts';
+import { jobs } from '../../schema/jobs/jobs.ts';
+import { results } from '../../schema/jobs/results.ts';
+import { submissionPoints, submissions } from '../../schema/queue/submissions.ts';
 import { sweeps } from '../../schema/sweeps.ts';
 import { jobSummaryColumns } from './list-jobs.ts';
 import { mayOpen } from './visible-jobs.ts';

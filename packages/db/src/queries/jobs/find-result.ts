@@ -1,7 +1,7 @@
 import { and, eq, sql } from 'drizzle-orm';
 import type { Queryable } from '../../client.ts';
-import { jobs } from '../../schema/jobs.ts';
-import { resultArrayRows, results } from '../../schema/results.ts';
+import { jobs } from '../../schema/jobs/jobs.ts';
+import { resultArrayRows, results } from '../../schema/jobs/results.ts';
 import { mayOpen } from './visible-jobs.ts';
 
 /** A result of a job, or of a re-run of one, that this person may open. */

@@ -1,8 +1,8 @@
 import type { JobState } from '@nightcone/contracts';
 import { and, count, eq, type SQL, sql } from 'drizzle-orm';
 import type { Queryable } from '../../client.ts';
-import { jobs } from '../../schema/jobs.ts';
-import { results } from '../../schema/results.ts';
+import { jobs } from '../../schema/jobs/jobs.ts';
+import { results } from '../../schema/jobs/results.ts';
 import { isListed, isMine } from './visible-jobs.ts';
 
 export type JobSort = 'createdAt' | 'finishedAt' | 'cpuMs' | 'model';

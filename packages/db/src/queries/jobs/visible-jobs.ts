@@ -1,5 +1,5 @@
 import { type SQL, sql } from 'drizzle-orm';
-import { jobs } from '../../schema/jobs.ts';
+import { jobs } from '../../schema/jobs/jobs.ts';
 
 /** Jobs that this person has asked for, alone or in a sweep. */
 export const isMine = (viewer: string): SQL<boolean> =>

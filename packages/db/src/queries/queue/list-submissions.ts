@@ -1,6 +1,7 @@
 import { and, asc, desc, eq, getTableColumns, inArray, type SQL, sql } from 'drizzle-orm';
 import type { Queryable } from '../../client.ts';
-import { submissions, turns } from '../../schema/queue.ts';
+import { submissions } from '../../schema/queue/submissions.ts';
+import { turns } from '../../schema/queue/turns.ts';
 import { quotaBalances } from '../../schema/quotas.ts';
 import { sweeps } from '../../schema/sweeps.ts';
 

@@ -1,7 +1,7 @@
 import { sql } from 'drizzle-orm';
 import type { Transaction } from '../../client.ts';
 import { QuotaExceeded } from '../../errors.ts';
-import type { submissionKinds } from '../../schema/queue.ts';
+import type { submissionKinds } from '../../schema/queue/submissions.ts';
 import type { Actor } from '../audit.ts';
 
 /** One job as it was planned. Milliseconds are reference CPU. */

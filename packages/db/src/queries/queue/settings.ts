@@ -1,6 +1,6 @@
 import { desc } from 'drizzle-orm';
 import type { Db, Queryable } from '../../client.ts';
-import { settings } from '../../schema/settings.ts';
+import { settings } from '../../schema/queue/settings.ts';
 import { type Actor, saveAuditEntry } from '../audit.ts';
 
 export type SettingsRow = typeof settings.$inferSelect;

@@ -1,6 +1,7 @@
 import { eq } from 'drizzle-orm';
 import type { Db } from '../../client.ts';
-import { executions, jobs } from '../../schema/jobs.ts';
+import { executions } from '../../schema/jobs/executions.ts';
+import { jobs } from '../../schema/jobs/jobs.ts';
 import { saveAuditEntry } from '../audit.ts';
 import { type IdempotencyKey, once } from '../idempotency.ts';
 import { type Submitter, saveSubmission } from './save-submission.ts';

@@ -1,7 +1,7 @@
 import type { ArrayInfo, Certificate } from '@nightcone/contracts';
 import { sql } from 'drizzle-orm';
 import { bigint, boolean, check, integer, jsonb, pgTable, primaryKey, text } from 'drizzle-orm/pg-core';
-import { bytea, instant, isDigest, oneOf } from './columns.ts';
+import { bytea, instant, isDigest, oneOf } from '../columns.ts';
 
 export const resultStates = ['kept', 'evicted'] as const;
 

@@ -1,7 +1,7 @@
 import { sql } from 'drizzle-orm';
 import { bigint, check, integer, pgTable, text, time, uuid } from 'drizzle-orm/pg-core';
-import { accounts } from './accounts.ts';
-import { instant } from './columns.ts';
+import { accounts } from '../accounts.ts';
+import { instant } from '../columns.ts';
 
 /** The group's settings, versioned: the row with the highest version counts; none is ever changed. */
 export const settings = pgTable(
