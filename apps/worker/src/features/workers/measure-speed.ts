@@ -6,14 +6,29 @@ import type { Outcome, ThreadTask } from '../../threads/messages.ts';
 
 /** One job for each kind of work that kernels do: closed-form tables, real and complex eigenvalue problems. */
 const goldenJobs = [
-  { model: 'landau-levels', parameters: { fieldT: { kind: 'range', start: 1, stop: 20, count: 201 } } },
   {
-    model: 'continuum-ribbon',
-    parameters: { edge: { kind: 'zigzag' }, fieldT: 5, kPerNm: { kind: 'range', start: -0.2, stop: 0.2, count: 21 } },
+    model: 'landau-levels',
+    parameters: {
+      fieldT: { kind: 'range', start: 1, stop: 20, count: 61 },
+      energyEv: { kind: 'range', start: -0.4, stop: 0.4, count: 201 },
+    },
   },
   {
     model: 'continuum-ribbon',
-    parameters: { edge: { kind: 'armchair' }, kPerNm: { kind: 'range', start: -0.2, stop: 0.2, count: 21 } },
+    parameters: {
+      edge: { kind: 'zigzag' },
+      width: { kind: 'nm', widthNm: 60 },
+      fieldT: 5,
+      kPerNm: { kind: 'range', start: -0.2, stop: 0.2, count: 21 },
+    },
+  },
+  {
+    model: 'continuum-ribbon',
+    parameters: {
+      edge: { kind: 'armchair' },
+      width: { kind: 'dimer-lines', count: 40 },
+      kPerNm: { kind: 'range', start: -1, stop: 1, count: 41 },
+    },
   },
 ];
 
