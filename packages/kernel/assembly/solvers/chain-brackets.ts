@@ -3,7 +3,7 @@
  *
  * Source    W. Barth, R. S. Martin, J. H. Wilkinson, Numer. Math. 9 (1967) 386–393 (bisection by index); eight shifts
  *           per pass are spread over the distinct brackets.
- * Input     chain; first, count: indices first … first+count−1 (0 = lowest of all); guesses and widths (0 for none).
+ * Input     chain; first, count: indices first … first+count−1 (0 = lowest of all).
  * Output    a Brackets whose every level is isolated and has been halved three times since, or is as narrow as
  *           chain.tolerance (levels closer than that share a bracket).
  * Cost      one pass of eight counts per eight distinct brackets and halving.
@@ -77,41 +77,6 @@ function count(chain: Chain, brackets: Brackets, used: i32): bool {
   for (let i = used; i < 8; i++) put(shifts, i, at(shifts, 0));
   if (!chainCounts(chain, shifts, counts)) return false;
   for (let i = 0; i < used; i++) learn(brackets, at(shifts, i), intAt(counts, i));
-  return true;
-}
-
-/** Tries guess ± width for every level, then ± 16 width … where that was no bracket: three rounds, then bisection. */
-export function bracketGuesses(chain: Chain, brackets: Brackets, guesses: usize, widths: usize): bool {
-  for (let round = 0, factor: f64 = 1; round < 3; round++, factor *= 16) {
-    let used = 0;
-    for (let i = 0; i < brackets.count; i++) {
-      const reach = Math.max(at(widths, i), 4 * chain.tolerance) * factor;
-      const low = at(guesses, i) - reach;
-      const high = at(guesses, i) + reach;
-      if (at(brackets.low, i) < low) {
-        put(shifts, used++, low);
-        if (used == 8) {
-          if (!count(chain, brackets, used)) return false;
-          used = 0;
-        }
-      }
-      if (at(brackets.high, i) > high) {
-        put(shifts, used++, high);
-        if (used == 8) {
-          if (!count(chain, brackets, used)) return false;
-          used = 0;
-        }
-      }
-    }
-    if (used > 0 && !count(chain, brackets, used)) return false;
-    let open = false;
-    for (let i = 0; i < brackets.count; i++) {
-      const reach = 2.5 * Math.max(at(widths, i), 4 * chain.tolerance) * factor;
-      if (at(brackets.high, i) - at(brackets.low, i) > reach) open = true;
-      else putInt(brackets.halvings, i, 3);
-    }
-    if (!open) return true;
-  }
   return true;
 }
 

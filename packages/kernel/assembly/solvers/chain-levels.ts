@@ -1,19 +1,24 @@
 /**
- * Levels of a chain by index, with their vectors: brackets by bisection, refined by twisted Rayleigh-quotient steps
- * that never leave their bracket, and each proved by counts on both sides of the value returned.
+ * Levels of a chain by index, with unit vectors: brackets by bisection (or guesses), refined by twisted
+ * Rayleigh-quotient steps, and each proved by counts on both sides of the value returned.
+ *
+ * Guesses are believed first: steps run from them without brackets, and only the proof decides. Where it fails, all
+ * levels are bracketed by bisection and refined inside their brackets. The vector of a lone level is that of its last
+ * step; pairs of a ring, clusters and levels that only bisection reached get theirs in chain-vectors.ts.
  *
  * Source    chain-brackets.ts, twisted-step.ts, ring-step.ts; safeguarding as in R. P. Brent, Algorithms for
  *           Minimization without Derivatives (1973) ch. 4 (a step that leaves the bracket is replaced by halving).
- * Input     a sealed chain; first, count ≥ 1; guesses, widths or 0.
- * Output    values[count] ascending, errors[count] (half width of the proved interval of each value).
+ * Input     a sealed chain; first, count ≥ 1; guesses or 0; vectors: room for count vectors (chain-vectors.ts).
+ * Output    values[count] ascending, errors[count] (half width of the proved interval of each value), fresh[count] i32
+ *           (1: the vector belongs to the value).
  * Accuracy  #(< value − error) ≤ j < #(< value + error) for every level j, error of a few ε‖H‖.
- * Cost      about 2 counts and 2–4 steps per level from good guesses, 12 counts more from none.
+ * Cost      2 steps and 2 counts per level from good guesses, 2 steps and 12 counts more from none.
  * Fails     false when a ring's elimination grows from every start.
  */
-import { mark, release, reserve, reserveF64 } from "../arena";
-import { bisect, bracketGuesses, Brackets, intAt, isIsolated, learn, newBrackets, putInt } from "./chain-brackets";
-import { Chain, chainCounts, FOLDS } from "./chain";
+import { mark, release, reserve } from "../arena";
 import { at, put } from "../doubles";
+import { bisect, Brackets, intAt, learn, newBrackets, putInt } from "./chain-brackets";
+import { Chain, chainCounts, FOLDS } from "./chain";
 import { LONE, ringStep, ringStepBytes } from "./ring-step";
 import { twistedBytes, twistedStep } from "./twisted-step";
 
@@ -22,59 +27,129 @@ const counts: usize = memory.data(32, 16);
 const next: usize = memory.data(64, 16);
 const residual: usize = memory.data(64, 16);
 const modes: usize = memory.data(32, 16);
+const targets: usize = memory.data(32, 16);
 
 export function stepBytes(chain: Chain): u64 {
   return chain.closed ? ringStepBytes(chain.n) : twistedBytes(chain.n);
 }
 
+/** Doubles of one vector. */
+@inline
+export function vectorLength(chain: Chain): i32 {
+  return chain.closed ? 2 * chain.n : chain.n;
+}
+
 export function levelsByIndex(
-  chain: Chain, first: i32, count: i32, guesses: usize, widths: usize, values: usize, errors: usize,
+  chain: Chain, first: i32, count: i32, guesses: usize, values: usize, errors: usize, vectors: usize, fresh: usize,
 ): bool {
   const room = mark();
-  const brackets = newBrackets(chain, first, count);
-  if (guesses != 0 && !bracketGuesses(chain, brackets, guesses, widths)) return false;
-  if (!bisect(chain, brackets, 3)) return false;
   const workspace = reserve(stepBytes(chain));
-  if (!refine(chain, brackets, values, errors, workspace)) return false;
+  const active = reserve(<u64>count * 4);
+  const brackets = newBrackets(chain, first, count);
+  if (guesses != 0) {
+    memory.copy(values, guesses, <usize>count << 3);
+    if (follow(chain, count, values, errors, vectors, fresh, active, workspace)) {
+      if (!prove(chain, brackets, values, errors)) return false;
+      if (allProved(count, errors)) {
+        release(room);
+        return true;
+      }
+    }
+  }
+  if (!bisect(chain, brackets, 3)) return false;
+  if (!refine(chain, brackets, values, errors, vectors, fresh, active, workspace)) return false;
   if (!prove(chain, brackets, values, errors)) return false;
+  if (!allProved(count, errors) && !settle(chain, brackets, values, errors, fresh)) return false;
   release(room);
   return true;
 }
 
-/** Twisted steps for the isolated levels, eight at a time; the others take the middle of their narrow bracket. */
-function refine(chain: Chain, brackets: Brackets, values: usize, errors: usize, workspace: usize): bool {
-  const active = reserve(<u64>brackets.count * 4);
+/** Levels alone, without vectors or guesses: as levelsByIndex. */
+export function levelValues(chain: Chain, first: i32, count: i32, values: usize, errors: usize): bool {
+  const room = mark();
+  const done = levelsByIndex(chain, first, count, 0, values, errors, 0, reserve(<u64>count * 4));
+  release(room);
+  return done;
+}
+
+/** One step of the levels active[from …]; the shifts are their values. */
+function step(
+  chain: Chain, fold: i32, active: usize, from: i32, here: i32, values: usize, vectors: usize, workspace: usize,
+): void {
+  const size = <usize>vectorLength(chain) << 3;
+  for (let k = 0; k < 8; k++) {
+    const i = intAt(active, from + (k < here ? k : 0));
+    put(shifts, k, at(values, i));
+    putInt(modes, k, LONE);
+    putInt(targets, k, vectors != 0 && k < here ? <i32>(vectors + <usize>i * size) : 0);
+  }
+  if (chain.closed) ringStep(chain, fold, shifts, modes, next, residual, targets, workspace);
+  else twistedStep(chain, shifts, next, residual, counts, targets, workspace);
+}
+
+/** Steps from guesses until they stand still, at most five; false when one does not or they lose their order. */
+function follow(
+  chain: Chain, count: i32, values: usize, errors: usize, vectors: usize, fresh: usize, active: usize, workspace: usize,
+): bool {
+  let open = count;
+  for (let i = 0; i < count; i++) {
+    putInt(active, i, i);
+    putInt(fresh, i, 1);
+    put(errors, i, 2 * chain.tolerance);
+  }
+  for (let round = 0; open > 0; round++) {
+    if (round == 5) return false;
+    let left = 0;
+    for (let from = 0; from < open; from += 8) {
+      const here = min(8, open - from);
+      step(chain, round & 1, active, from, here, values, vectors, workspace);
+      for (let k = 0; k < here; k++) {
+        const i = intAt(active, from + k);
+        const moved = Math.abs(at(next, k) - at(values, i));
+        if (!(moved < 0.1 * chain.norm)) return false; // also for NaN
+        put(values, i, Math.abs(at(next, k)) < 1e-100 ? 0 : at(next, k));
+        if (moved > 8 * chain.tolerance) putInt(active, left++, i);
+      }
+    }
+    open = left;
+  }
+  for (let i = 1; i < count; i++) if (at(values, i) < at(values, i - 1) - 4 * chain.tolerance) return false;
+  return true;
+}
+
+/** Twisted steps for the isolated levels inside their brackets; the others take the middle of their narrow bracket. */
+function refine(
+  chain: Chain, brackets: Brackets, values: usize, errors: usize, vectors: usize, fresh: usize, active: usize, workspace: usize,
+): bool {
   let open = 0;
   for (let i = 0; i < brackets.count; i++) {
     put(values, i, 0.5 * (at(brackets.low, i) + at(brackets.high, i)));
     put(errors, i, 2 * chain.tolerance);
+    putInt(fresh, i, 0);
     if (at(brackets.high, i) - at(brackets.low, i) > chain.tolerance) putInt(active, open++, i);
   }
-  for (let i = 0; i < 8; i++) putInt(modes, i, LONE);
   for (let round = 0; open > 0 && round < 60; round++) {
     let left = 0;
     for (let from = 0; from < open; from += 8) {
       const here = min(8, open - from);
-      for (let k = 0; k < 8; k++) put(shifts, k, at(values, intAt(active, from + (k < here ? k : 0))));
-      if (chain.closed) {
-        // the step does not watch growth, so the bracket is narrowed by a count of its own
-        ringStep(chain, round % FOLDS, shifts, modes, next, residual, 0, workspace);
-        if (round > 0 && !chainCounts(chain, shifts, counts)) return false;
-      } else {
-        twistedStep(chain, shifts, next, residual, counts, 0, workspace);
-      }
+      step(chain, round % FOLDS, active, from, here, values, vectors, workspace);
+      // a ring's step does not watch growth: its bracket is narrowed by a count of its own
+      if (chain.closed && round > 0 && !chainCounts(chain, shifts, counts)) return false;
       for (let k = 0; k < here; k++) {
         const i = intAt(active, from + k);
         const x = at(values, i);
-        if (!chain.closed || round > 0) learn(brackets, at(shifts, k), intAt(counts, k));
+        if (!chain.closed || round > 0) learn(brackets, x, intAt(counts, k));
         const low = at(brackets.low, i);
         const high = at(brackets.high, i);
         const better = at(next, k);
         const inside = better > low - chain.tolerance && better < high + chain.tolerance; // false for NaN
-        const done = inside && (Math.abs(better - x) <= chain.tolerance || at(residual, k) <= 0.5 * chain.tolerance);
-        if (done) put(values, i, better);
-        else if (high - low <= chain.tolerance) put(values, i, 0.5 * (low + high));
-        else {
+        if (inside && Math.abs(better - x) <= 8 * chain.tolerance) {
+          // a zero mode of a zero diagonal: the pivot floor leaves 1e-200
+          put(values, i, Math.abs(better) < 1e-100 ? 0 : better);
+          putInt(fresh, i, 1);
+        } else if (high - low <= chain.tolerance) {
+          put(values, i, 0.5 * (low + high));
+        } else {
           put(values, i, inside && better > low && better < high ? better : 0.5 * (low + high));
           putInt(active, left++, i);
         }
@@ -85,7 +160,7 @@ function refine(chain: Chain, brackets: Brackets, values: usize, errors: usize, 
   return true;
 }
 
-/** Counts at value ± error for every level; what is not proved is bisected down to the tolerance. */
+/** Counts at value ± error for every level; what is not proved gets a negative error. */
 function prove(chain: Chain, brackets: Brackets, values: usize, errors: usize): bool {
   const n = brackets.count;
   for (let from = 0; from < n; from += 4) {
@@ -106,15 +181,22 @@ function prove(chain: Chain, brackets: Brackets, values: usize, errors: usize): 
       if (!(below <= j && j < above)) put(errors, i, -1);
     }
   }
-  let missed = false;
-  for (let i = 0; i < n; i++) if (at(errors, i) < 0) missed = true;
-  if (!missed) return true;
-  // no step converged to these: pure bisection, whose bracket is its own proof
+  return true;
+}
+
+function allProved(count: i32, errors: usize): bool {
+  for (let i = 0; i < count; i++) if (at(errors, i) < 0) return false;
+  return true;
+}
+
+/** No step converged to the levels left: pure bisection, whose bracket is its own proof. */
+function settle(chain: Chain, brackets: Brackets, values: usize, errors: usize, fresh: usize): bool {
   if (!bisect(chain, brackets, 400)) return false;
-  for (let i = 0; i < n; i++) {
+  for (let i = 0; i < brackets.count; i++) {
     if (at(errors, i) >= 0) continue;
     put(values, i, 0.5 * (at(brackets.low, i) + at(brackets.high, i)));
     put(errors, i, at(brackets.high, i) - at(brackets.low, i));
+    putInt(fresh, i, 0);
   }
   return true;
 }

@@ -2,12 +2,12 @@
  * Unit vectors of consecutive levels of a chain, with their measured residuals and clusters.
  *
  * Levels closer than 1000 residual bounds form a cluster: their single vectors are not determined, only the space.
- * Lone levels take one twisted step; a pair of a ring takes both vectors of one twisted block; every other cluster is
+ * Lone levels keep the vector of their last step or take one; a pair of a ring takes both vectors of one twisted block; every other cluster is
  * made by inverse iteration with re-orthogonalisation.
  *
  * Source    twisted-step.ts, ring-step.ts; clusters as in G. Peters, J. H. Wilkinson, Handbook for Automatic
  *           Computation II (1971) 418–439, inverse iteration with Gram–Schmidt.
- * Input     a sealed chain; values[count] ascending and errors[count] from levelsByIndex.
+ * Input     a sealed chain; values[count], errors[count], vectors[count] and fresh[count] from levelsByIndex.
  * Output    vectors[count]: n doubles each (open) or 2n (ring, re and im per site), orthonormal inside a cluster;
  *           residuals[count] = ‖H z − λ z‖ as measured; cluster[count] i32: index of the first level of its cluster.
  * Accuracy  residual a few ε‖H‖ for lone levels; within a cluster at most its width.
@@ -18,9 +18,9 @@ import { mark, release, reserve } from "../arena";
 import { addScaled, dot, fillFixed, normalise, projectOut } from "../linalg/dense-vector";
 import { chainResidual } from "./chain-apply";
 import { intAt, putInt } from "./chain-brackets";
-import { Chain } from "./chain";
+import { Chain, FOLDS } from "./chain";
 import { at, put } from "../doubles";
-import { stepBytes } from "./chain-levels";
+import { stepBytes, vectorLength } from "./chain-levels";
 import { LONE, PAIR_FIRST, PAIR_SECOND, ringStep } from "./ring-step";
 import { factorRing, ringSolveBytes, solveRing } from "./ring-solve";
 import { factorTridiagonal, solveTridiagonal, tridiagonalSolveBytes } from "./tridiagonal-solve";
@@ -33,11 +33,8 @@ const residual: usize = memory.data(64, 16);
 const modes: usize = memory.data(32, 16);
 const targets: usize = memory.data(32, 16);
 
-/** Doubles of one vector. */
-@inline
-export function vectorLength(chain: Chain): i32 {
-  return chain.closed ? 2 * chain.n : chain.n;
-}
+/** Residuals up to this many tolerances are good: a few hundred roundings of the largest element. */
+const ACCEPTED: f64 = 64;
 
 /** First level of each level's cluster: neighbours closer than 1000 bounds of their errors. */
 export function clusterLevels(count: i32, values: usize, errors: usize, cluster: usize): void {
@@ -48,19 +45,23 @@ export function clusterLevels(count: i32, values: usize, errors: usize, cluster:
 }
 
 export function levelVectors(
-  chain: Chain, count: i32, values: usize, errors: usize, vectors: usize, residuals: usize, cluster: usize,
+  chain: Chain, count: i32, values: usize, errors: usize, vectors: usize, fresh: usize, residuals: usize, cluster: usize,
 ): bool {
   const room = mark();
   clusterLevels(count, values, errors, cluster);
   const workspace = reserve(stepBytes(chain));
   const size = <usize>vectorLength(chain) << 3;
-  const group = reserve(<u64>count * 4 + 8);
+  const group = reserve(64);
   let waiting = 0;
   for (let i = 0; i < count; ) {
     const members = clusterSize(cluster, count, i);
+    if (members == 1 && intAt(fresh, i) != 0) {
+      i++;
+      continue;
+    }
     if (members == 1 || (chain.closed && members == 2)) {
       if (waiting + members > 8) {
-        step(chain, group, waiting, values, cluster, count, vectors, workspace);
+        step(chain, 0, group, waiting, values, cluster, count, vectors, workspace);
         waiting = 0;
       }
       for (let k = 0; k < members; k++) putInt(group, waiting++, i + k);
@@ -69,10 +70,10 @@ export function levelVectors(
     }
     i += members;
   }
-  if (waiting > 0) step(chain, group, waiting, values, cluster, count, vectors, workspace);
+  if (waiting > 0) step(chain, 0, group, waiting, values, cluster, count, vectors, workspace);
+  if (chain.closed) refold(chain, group, values, cluster, count, vectors, residuals, workspace);
   for (let i = 0; i < count; ) {
     const members = clusterSize(cluster, count, i);
-    if (chain.closed && members == 2) orthogonalisePair(chain, vectors + <usize>i * size, size);
     if (!measure(chain, i, members, values, vectors, residuals)) return false;
     i += members;
   }
@@ -89,7 +90,7 @@ export function clusterSize(cluster: usize, count: i32, first: i32): i32 {
 
 /** Twisted steps of up to eight levels. */
 function step(
-  chain: Chain, group: usize, used: i32, values: usize, cluster: usize, count: i32, vectors: usize, workspace: usize,
+  chain: Chain, fold: i32, group: usize, used: i32, values: usize, cluster: usize, count: i32, vectors: usize, workspace: usize,
 ): void {
   const size = <usize>vectorLength(chain) << 3;
   for (let lane = 0; lane < 8; lane++) {
@@ -102,13 +103,45 @@ function step(
     // both vectors of a pair come from one shift, or they need not be independent
     if (pair) put(shifts, lane, 0.5 * (at(values, first) + at(values, first + 1)));
   }
-  if (chain.closed) ringStep(chain, 0, shifts, modes, next, residual, targets, workspace);
+  if (chain.closed) ringStep(chain, fold, shifts, modes, next, residual, targets, workspace);
   else twistedStep(chain, shifts, next, residual, counts, targets, workspace);
 }
 
 function orthogonalisePair(chain: Chain, vector: usize, size: usize): void {
   projectOut(chain.n, vector, vector + size);
   normalise(2 * chain.n, vector + size);
+}
+
+/**
+ * Ring vectors whose residual shows a grown elimination are taken again from other folds, eight at a time, which is
+ * much cheaper than a solve each. Makes every pair orthonormal on the way.
+ */
+function refold(
+  chain: Chain, group: usize, values: usize, cluster: usize, count: i32, vectors: usize, residuals: usize, workspace: usize,
+): void {
+  const size = <usize>vectorLength(chain) << 3;
+  for (let i = 0; i < count; i += clusterSize(cluster, count, i)) {
+    if (clusterSize(cluster, count, i) == 2) orthogonalisePair(chain, vectors + <usize>i * size, size);
+  }
+  for (let fold = 1; fold < FOLDS; fold++) {
+    let waiting = 0;
+    for (let i = 0; i < count; ) {
+      const members = clusterSize(cluster, count, i);
+      let worst: f64 = 0;
+      for (let k = i; k < i + members; k++) worst = Math.max(worst, chainResidual(chain, at(values, k), vectors + <usize>k * size));
+      const width = at(values, i + members - 1) - at(values, i);
+      if (members <= 2 && !(worst <= ACCEPTED * chain.tolerance + width) && waiting + members <= 8) {
+        for (let k = 0; k < members; k++) putInt(group, waiting++, i + k);
+      }
+      i += members;
+    }
+    if (waiting == 0) return;
+    step(chain, fold, group, waiting, values, cluster, count, vectors, workspace);
+    for (let k = 0; k + 1 < waiting; k++) {
+      const i = intAt(group, k);
+      if (intAt(group, k + 1) == i + 1 && intAt(cluster, i + 1) == i) orthogonalisePair(chain, vectors + <usize>i * size, size);
+    }
+  }
 }
 
 /** Residuals of one cluster; where they are too large, one more inverse step by LU, then inverse iteration anew. */
@@ -127,7 +160,7 @@ function measure(
       put(residuals, i, r);
       if (!(r <= worst)) worst = r; // keeps a NaN
     }
-    if (worst <= 64 * chain.tolerance + width) return true;
+    if (worst <= ACCEPTED * chain.tolerance + width) return true;
   }
   return worst <= 1e4 * chain.tolerance + width;
 }

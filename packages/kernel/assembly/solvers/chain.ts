@@ -4,7 +4,7 @@
  *
  * The model writes diagonal and bonds, calls `sealChain`, and every solver of this folder takes it from there.
  */
-import { reserve, reserveF64 } from "../arena";
+import { reserve, reserveF64, reserveZeroed } from "../arena";
 import { EPSILON } from "../constants";
 import { at, put } from "../doubles";
 import { FOLD_BYTES, ringCounts } from "./ring-count";
@@ -54,7 +54,8 @@ export function newChain(capacity: i32, closed: bool): Chain {
   chain.diagonal = reserveF64(capacity);
   chain.bonds = reserveF64(capacity);
   chain.squares = closed ? 0 : reserveF64(capacity);
-  chain.folds = closed ? reserve((<u64>capacity / 2) * FOLD_BYTES * FOLDS) : 0;
+  // one block more: ring-step.ts reads one past the end
+  chain.folds = closed ? reserveZeroed(((<u64>capacity / 2) * FOLDS + 1) * FOLD_BYTES) : 0;
   chain.cosine = 1;
   chain.sine = 0;
   chain.folded = 0;

@@ -4,33 +4,38 @@
  * On the folded ring of ring-count.ts, forward blocks D⁺[i] = [p, c e^{iθ}; ·, s] from the corner and backward blocks
  * D⁻[i] = [P, C; C, S] (C real) from the middle bond meet in Γ[i] = D⁺[i] + D⁻[i] − (A[i] − x). With γ the smaller
  * eigenvalue of Γ[r] and v its unit vector, z[r] = v, z[i−1] = −D⁺[i−1]⁻¹ B z[i], z[i+1] = −D⁻[i+1]⁻¹ B z[i] gives
- * (H − x) z = γ v at block r and 0 elsewhere: the Rayleigh quotient is x + γ/‖z‖², the residual at x |γ|/‖z‖. Above r
- * everything is real in (z, e^{iθ} z'), below in (z, z').
+ * (H − x) z = γ v at block r and 0 elsewhere: the Rayleigh quotient is x + γ/‖z‖², the residual at x |γ|/‖z‖. Towards
+ * the corner everything is real in (z, e^{iθ} z'), towards the middle in (z, z').
  *
  * A ring has levels of multiplicity two. For such a pair both eigenvalues of Γ are small; mode PAIR_FIRST / PAIR_SECOND
  * takes r where the larger of the two is smallest and follows its first / second eigenvector: two independent vectors.
  *
  * Source    block form of the method of twisted-step.ts, own derivation (above).
- * Input     a closed chain; k, the fold to use; shifts[8]; modes[8] i32; vectors: 8 addresses of 2n doubles (re, im per site) in a u32
- *           list, 0 for none; workspace of ringStepBytes(n).
+ * Input     a closed chain; k, the fold to use; shifts[8]; modes[8] i32; vectors: 8 addresses of 2n doubles (re, im per
+ *           site) in a u32 list, 0 for none; workspace of ringStepBytes(n).
  * Output    next[8], residual[8]; unit vectors where asked.
  * Accuracy  as twisted-step.ts while the elimination does not grow; the caller measures the true residual.
- * Cost      about 9 n divisions or roots, four f64x2 chains.   Fails  never.
+ * Cost      about 2 n divisions and 60 n multiplications per two shifts.   Fails  never.
  */
 import { Chain, foldCorner, foldMiddle, foldOf, foldStart } from "./chain";
 import { at, put } from "../doubles";
 import { DETERMINANT_FLOOR, FLUSH, FOLD_BYTES } from "./ring-count";
-import { flushed } from "./twisted-step";
 
 export const LONE: i32 = 0;
 export const PAIR_FIRST: i32 = 1;
 export const PAIR_SECOND: i32 = 2;
 
-/** Per block: p, s, c of D⁺ for eight lanes, then P, S, C of D⁻. */
-const BLOCK_BYTES: usize = 6 * 64;
+/** Per block and eight lanes: p, s, c of D⁺; s/det, p/det, c/det of D⁺; the same three of D⁻. */
+const BLOCK_BYTES: usize = 9 * 64;
 
 export function ringStepBytes(n: i32): u64 {
   return (<u64>n / 2) * BLOCK_BYTES;
+}
+
+/** A vector of two doubles. */
+@inline
+function both(a: f64, b: f64): v128 {
+  return f64x2.replace_lane(f64x2.splat(a), 1, b);
 }
 
 @inline
@@ -45,18 +50,28 @@ function flush(c: v128): v128 {
   return f64x2.sub(f64x2.add(c, tiny), tiny);
 }
 
-const bestOf: usize = memory.data(64, 16);
-const whereOf: usize = memory.data(64, 16);
+// per lane: the block of the twist and Γ there
+const rows: usize = memory.data(64, 16);
+const meetP: usize = memory.data(64, 16);
+const meetS: usize = memory.data(64, 16);
+const meetRe: usize = memory.data(64, 16);
+const meetIm: usize = memory.data(64, 16);
+/** All bits set for lanes of a pair. */
+const pairs: usize = memory.data(64, 16);
 
 export function ringStep(
   chain: Chain, k: i32, shifts: usize, modes: usize, next: usize, residual: usize, vectors: usize, workspace: usize,
 ): void {
   const blocks = chain.n / 2;
   const fold = foldOf(chain, k);
+  for (let lane = 0; lane < 8; lane++) {
+    store<i64>(pairs + (<usize>lane << 3), load<i32>(modes + (<usize>lane << 2)) == LONE ? 0 : -1);
+  }
   forward(fold, foldCorner(chain, k), blocks, shifts, workspace);
-  backward(fold, foldMiddle(chain, k), blocks, shifts, workspace);
-  for (let lane = 0; lane < 8; lane++) bestRow(chain, fold, blocks, lane, at(shifts, lane), load<i32>(modes + (<usize>lane << 2)) != LONE, workspace);
-  for (let lane = 0; lane < 8; lane++) finish(chain, fold, foldStart(chain, k), blocks, lane, at(shifts, lane), load<i32>(modes + (<usize>lane << 2)), next, residual, vectors, workspace);
+  backward(fold, foldMiddle(chain, k), chain.cosine, chain.sine, blocks, shifts, workspace);
+  for (let lane = 0; lane < 8; lane++) {
+    finish(chain, fold, foldStart(chain, k), blocks, lane, at(shifts, lane), load<i32>(modes + (<usize>lane << 2)), next, residual, vectors, workspace);
+  }
 }
 
 function forward(fold: usize, corner: f64, blocks: i32, shifts: usize, workspace: usize): void {
@@ -79,168 +94,258 @@ function forward(fold: usize, corner: f64, blocks: i32, shifts: usize, workspace
   let p3 = f64x2.sub(f64x2.splat(load<f64>(from)), x3);
   let s3 = f64x2.sub(f64x2.splat(load<f64>(from, 8)), x3);
   let c3 = f64x2.splat(corner);
-  for (let i = 0; ; ) {
+  for (let i = 0; i < blocks; i++) {
+    const r0 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p0, s0), f64x2.mul(c0, c0))));
+    const r1 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p1, s1), f64x2.mul(c1, c1))));
+    const r2 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p2, s2), f64x2.mul(c2, c2))));
+    const r3 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p3, s3), f64x2.mul(c3, c3))));
+    from += FOLD_BYTES; // one past the last block is read and not used: chain.ts leaves room
+    const a = v128.load64_splat(from, 0);
+    const b = v128.load64_splat(from, 8);
+    const e2 = v128.load64_splat(from, 16);
+    const f2 = v128.load64_splat(from, 24);
+    const ef = v128.load64_splat(from, 32);
     v128.store(to, p0, 0);
     v128.store(to, s0, 64);
     v128.store(to, c0, 128);
+    const u0 = f64x2.mul(s0, r0);
+    const t0 = f64x2.mul(p0, r0);
+    const w0 = f64x2.mul(c0, r0);
+    v128.store(to, u0, 192);
+    v128.store(to, t0, 256);
+    v128.store(to, w0, 320);
+    p0 = f64x2.sub(f64x2.sub(a, x0), f64x2.mul(e2, u0));
+    s0 = f64x2.sub(f64x2.sub(b, x0), f64x2.mul(f2, t0));
+    c0 = flush(f64x2.mul(ef, w0));
     v128.store(to, p1, 16);
     v128.store(to, s1, 80);
     v128.store(to, c1, 144);
+    const u1 = f64x2.mul(s1, r1);
+    const t1 = f64x2.mul(p1, r1);
+    const w1 = f64x2.mul(c1, r1);
+    v128.store(to, u1, 208);
+    v128.store(to, t1, 272);
+    v128.store(to, w1, 336);
+    p1 = f64x2.sub(f64x2.sub(a, x1), f64x2.mul(e2, u1));
+    s1 = f64x2.sub(f64x2.sub(b, x1), f64x2.mul(f2, t1));
+    c1 = flush(f64x2.mul(ef, w1));
     v128.store(to, p2, 32);
     v128.store(to, s2, 96);
     v128.store(to, c2, 160);
+    const u2 = f64x2.mul(s2, r2);
+    const t2 = f64x2.mul(p2, r2);
+    const w2 = f64x2.mul(c2, r2);
+    v128.store(to, u2, 224);
+    v128.store(to, t2, 288);
+    v128.store(to, w2, 352);
+    p2 = f64x2.sub(f64x2.sub(a, x2), f64x2.mul(e2, u2));
+    s2 = f64x2.sub(f64x2.sub(b, x2), f64x2.mul(f2, t2));
+    c2 = flush(f64x2.mul(ef, w2));
     v128.store(to, p3, 48);
     v128.store(to, s3, 112);
     v128.store(to, c3, 176);
-    if (++i == blocks) break;
-    to += BLOCK_BYTES;
-    from += FOLD_BYTES;
-    const a = v128.load64_splat(from, 0);
-    const b = v128.load64_splat(from, 8);
-    const e2 = v128.load64_splat(from, 16);
-    const f2 = v128.load64_splat(from, 24);
-    const ef = v128.load64_splat(from, 32);
-    const r0 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p0, s0), f64x2.mul(c0, c0))));
-    const r1 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p1, s1), f64x2.mul(c1, c1))));
-    const r2 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p2, s2), f64x2.mul(c2, c2))));
-    const r3 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p3, s3), f64x2.mul(c3, c3))));
-    const t0 = f64x2.mul(p0, r0);
-    p0 = f64x2.sub(f64x2.sub(a, x0), f64x2.mul(e2, f64x2.mul(s0, r0)));
-    s0 = f64x2.sub(f64x2.sub(b, x0), f64x2.mul(f2, t0));
-    c0 = flush(f64x2.mul(ef, f64x2.mul(c0, r0)));
-    const t1 = f64x2.mul(p1, r1);
-    p1 = f64x2.sub(f64x2.sub(a, x1), f64x2.mul(e2, f64x2.mul(s1, r1)));
-    s1 = f64x2.sub(f64x2.sub(b, x1), f64x2.mul(f2, t1));
-    c1 = flush(f64x2.mul(ef, f64x2.mul(c1, r1)));
-    const t2 = f64x2.mul(p2, r2);
-    p2 = f64x2.sub(f64x2.sub(a, x2), f64x2.mul(e2, f64x2.mul(s2, r2)));
-    s2 = f64x2.sub(f64x2.sub(b, x2), f64x2.mul(f2, t2));
-    c2 = flush(f64x2.mul(ef, f64x2.mul(c2, r2)));
+    const u3 = f64x2.mul(s3, r3);
     const t3 = f64x2.mul(p3, r3);
-    p3 = f64x2.sub(f64x2.sub(a, x3), f64x2.mul(e2, f64x2.mul(s3, r3)));
+    const w3 = f64x2.mul(c3, r3);
+    v128.store(to, u3, 240);
+    v128.store(to, t3, 304);
+    v128.store(to, w3, 368);
+    p3 = f64x2.sub(f64x2.sub(a, x3), f64x2.mul(e2, u3));
     s3 = f64x2.sub(f64x2.sub(b, x3), f64x2.mul(f2, t3));
-    c3 = flush(f64x2.mul(ef, f64x2.mul(c3, r3)));
+    c3 = flush(f64x2.mul(ef, w3));
+    to += BLOCK_BYTES;
   }
 }
 
-function backward(fold: usize, middle: f64, blocks: i32, shifts: usize, workspace: usize): void {
+/** Backward blocks; on the way Γ and the block where its wanted eigenvalue is smallest (to a factor of two). */
+function backward(fold: usize, middle: f64, cosine: f64, sine: f64, blocks: i32, shifts: usize, workspace: usize): void {
   const one = f64x2.splat(1);
+  const zero = f64x2.splat(0);
+  const cos = f64x2.splat(cosine);
+  const sin = f64x2.splat(sine);
   let from = fold + <usize>(blocks - 1) * FOLD_BYTES;
   let to = workspace + <usize>(blocks - 1) * BLOCK_BYTES;
   const x0 = v128.load(shifts, 0);
-  let p0 = f64x2.sub(f64x2.splat(load<f64>(from)), x0);
-  let s0 = f64x2.sub(f64x2.splat(load<f64>(from, 8)), x0);
+  const pair0 = v128.load(pairs, 0);
+  let tp0 = zero;
+  let ts0 = zero;
   let c0 = f64x2.splat(middle);
+  let best0 = f64x2.splat(Infinity);
   const x1 = v128.load(shifts, 16);
-  let p1 = f64x2.sub(f64x2.splat(load<f64>(from)), x1);
-  let s1 = f64x2.sub(f64x2.splat(load<f64>(from, 8)), x1);
+  const pair1 = v128.load(pairs, 16);
+  let tp1 = zero;
+  let ts1 = zero;
   let c1 = f64x2.splat(middle);
+  let best1 = f64x2.splat(Infinity);
   const x2 = v128.load(shifts, 32);
-  let p2 = f64x2.sub(f64x2.splat(load<f64>(from)), x2);
-  let s2 = f64x2.sub(f64x2.splat(load<f64>(from, 8)), x2);
+  const pair2 = v128.load(pairs, 32);
+  let tp2 = zero;
+  let ts2 = zero;
   let c2 = f64x2.splat(middle);
+  let best2 = f64x2.splat(Infinity);
   const x3 = v128.load(shifts, 48);
-  let p3 = f64x2.sub(f64x2.splat(load<f64>(from)), x3);
-  let s3 = f64x2.sub(f64x2.splat(load<f64>(from, 8)), x3);
+  const pair3 = v128.load(pairs, 48);
+  let tp3 = zero;
+  let ts3 = zero;
   let c3 = f64x2.splat(middle);
-  for (let i = blocks - 1; ; ) {
-    v128.store(to, p0, 192);
-    v128.store(to, s0, 256);
-    v128.store(to, c0, 320);
-    v128.store(to, p1, 208);
-    v128.store(to, s1, 272);
-    v128.store(to, c1, 336);
-    v128.store(to, p2, 224);
-    v128.store(to, s2, 288);
-    v128.store(to, c2, 352);
-    v128.store(to, p3, 240);
-    v128.store(to, s3, 304);
-    v128.store(to, c3, 368);
-    if (i-- == 0) break;
+  let best3 = f64x2.splat(Infinity);
+  for (let i = blocks - 1; i >= 0; i--) {
+    const a = v128.load64_splat(from, 0);
+    const b = v128.load64_splat(from, 8);
     const e2 = v128.load64_splat(from, 16);
     const f2 = v128.load64_splat(from, 24);
     const ef = v128.load64_splat(from, 32);
+    const index = f64x2.splat(<f64>i);
+    // Γ = D⁺ minus what the blocks behind took away
+    const gp0 = f64x2.sub(v128.load(to, 0), tp0);
+    const gs0 = f64x2.sub(v128.load(to, 64), ts0);
+    const gc0 = v128.load(to, 128);
+    const gr0 = f64x2.add(f64x2.mul(gc0, cos), c0);
+    const gi0 = f64x2.mul(gc0, sin);
+    const o0 = f64x2.add(f64x2.mul(gr0, gr0), f64x2.mul(gi0, gi0));
+    // |small| ≈ |det|/(|P| + |S| + |o|), |large| ≈ |P| + |S| + |o|, both to a factor of two
+    const large0 = f64x2.add(f64x2.add(f64x2.abs(gp0), f64x2.abs(gs0)), f64x2.sqrt(o0));
+    const small0 = f64x2.div(f64x2.abs(f64x2.sub(f64x2.mul(gp0, gs0), o0)), large0);
+    const size0 = v128.bitselect(large0, small0, pair0);
+    const less0 = f64x2.lt(size0, best0);
+    if (v128.any_true(less0)) {
+      best0 = v128.bitselect(size0, best0, less0);
+      v128.store(rows, v128.bitselect(index, v128.load(rows, 0), less0), 0);
+      v128.store(meetP, v128.bitselect(gp0, v128.load(meetP, 0), less0), 0);
+      v128.store(meetS, v128.bitselect(gs0, v128.load(meetS, 0), less0), 0);
+      v128.store(meetRe, v128.bitselect(gr0, v128.load(meetRe, 0), less0), 0);
+      v128.store(meetIm, v128.bitselect(gi0, v128.load(meetIm, 0), less0), 0);
+    }
+    const p0 = f64x2.sub(f64x2.sub(a, x0), tp0);
+    const s0 = f64x2.sub(f64x2.sub(b, x0), ts0);
+    const r0 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p0, s0), f64x2.mul(c0, c0))));
+    const u0 = f64x2.mul(s0, r0);
+    const t0 = f64x2.mul(p0, r0);
+    const w0 = f64x2.mul(c0, r0);
+    v128.store(to, u0, 384);
+    v128.store(to, t0, 448);
+    v128.store(to, w0, 512);
+    tp0 = f64x2.mul(e2, u0);
+    ts0 = f64x2.mul(f2, t0);
+    c0 = flush(f64x2.mul(ef, w0));
+    // Γ = D⁺ minus what the blocks behind took away
+    const gp1 = f64x2.sub(v128.load(to, 16), tp1);
+    const gs1 = f64x2.sub(v128.load(to, 80), ts1);
+    const gc1 = v128.load(to, 144);
+    const gr1 = f64x2.add(f64x2.mul(gc1, cos), c1);
+    const gi1 = f64x2.mul(gc1, sin);
+    const o1 = f64x2.add(f64x2.mul(gr1, gr1), f64x2.mul(gi1, gi1));
+    // |small| ≈ |det|/(|P| + |S| + |o|), |large| ≈ |P| + |S| + |o|, both to a factor of two
+    const large1 = f64x2.add(f64x2.add(f64x2.abs(gp1), f64x2.abs(gs1)), f64x2.sqrt(o1));
+    const small1 = f64x2.div(f64x2.abs(f64x2.sub(f64x2.mul(gp1, gs1), o1)), large1);
+    const size1 = v128.bitselect(large1, small1, pair1);
+    const less1 = f64x2.lt(size1, best1);
+    if (v128.any_true(less1)) {
+      best1 = v128.bitselect(size1, best1, less1);
+      v128.store(rows, v128.bitselect(index, v128.load(rows, 16), less1), 16);
+      v128.store(meetP, v128.bitselect(gp1, v128.load(meetP, 16), less1), 16);
+      v128.store(meetS, v128.bitselect(gs1, v128.load(meetS, 16), less1), 16);
+      v128.store(meetRe, v128.bitselect(gr1, v128.load(meetRe, 16), less1), 16);
+      v128.store(meetIm, v128.bitselect(gi1, v128.load(meetIm, 16), less1), 16);
+    }
+    const p1 = f64x2.sub(f64x2.sub(a, x1), tp1);
+    const s1 = f64x2.sub(f64x2.sub(b, x1), ts1);
+    const r1 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p1, s1), f64x2.mul(c1, c1))));
+    const u1 = f64x2.mul(s1, r1);
+    const t1 = f64x2.mul(p1, r1);
+    const w1 = f64x2.mul(c1, r1);
+    v128.store(to, u1, 400);
+    v128.store(to, t1, 464);
+    v128.store(to, w1, 528);
+    tp1 = f64x2.mul(e2, u1);
+    ts1 = f64x2.mul(f2, t1);
+    c1 = flush(f64x2.mul(ef, w1));
+    // Γ = D⁺ minus what the blocks behind took away
+    const gp2 = f64x2.sub(v128.load(to, 32), tp2);
+    const gs2 = f64x2.sub(v128.load(to, 96), ts2);
+    const gc2 = v128.load(to, 160);
+    const gr2 = f64x2.add(f64x2.mul(gc2, cos), c2);
+    const gi2 = f64x2.mul(gc2, sin);
+    const o2 = f64x2.add(f64x2.mul(gr2, gr2), f64x2.mul(gi2, gi2));
+    // |small| ≈ |det|/(|P| + |S| + |o|), |large| ≈ |P| + |S| + |o|, both to a factor of two
+    const large2 = f64x2.add(f64x2.add(f64x2.abs(gp2), f64x2.abs(gs2)), f64x2.sqrt(o2));
+    const small2 = f64x2.div(f64x2.abs(f64x2.sub(f64x2.mul(gp2, gs2), o2)), large2);
+    const size2 = v128.bitselect(large2, small2, pair2);
+    const less2 = f64x2.lt(size2, best2);
+    if (v128.any_true(less2)) {
+      best2 = v128.bitselect(size2, best2, less2);
+      v128.store(rows, v128.bitselect(index, v128.load(rows, 32), less2), 32);
+      v128.store(meetP, v128.bitselect(gp2, v128.load(meetP, 32), less2), 32);
+      v128.store(meetS, v128.bitselect(gs2, v128.load(meetS, 32), less2), 32);
+      v128.store(meetRe, v128.bitselect(gr2, v128.load(meetRe, 32), less2), 32);
+      v128.store(meetIm, v128.bitselect(gi2, v128.load(meetIm, 32), less2), 32);
+    }
+    const p2 = f64x2.sub(f64x2.sub(a, x2), tp2);
+    const s2 = f64x2.sub(f64x2.sub(b, x2), ts2);
+    const r2 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p2, s2), f64x2.mul(c2, c2))));
+    const u2 = f64x2.mul(s2, r2);
+    const t2 = f64x2.mul(p2, r2);
+    const w2 = f64x2.mul(c2, r2);
+    v128.store(to, u2, 416);
+    v128.store(to, t2, 480);
+    v128.store(to, w2, 544);
+    tp2 = f64x2.mul(e2, u2);
+    ts2 = f64x2.mul(f2, t2);
+    c2 = flush(f64x2.mul(ef, w2));
+    // Γ = D⁺ minus what the blocks behind took away
+    const gp3 = f64x2.sub(v128.load(to, 48), tp3);
+    const gs3 = f64x2.sub(v128.load(to, 112), ts3);
+    const gc3 = v128.load(to, 176);
+    const gr3 = f64x2.add(f64x2.mul(gc3, cos), c3);
+    const gi3 = f64x2.mul(gc3, sin);
+    const o3 = f64x2.add(f64x2.mul(gr3, gr3), f64x2.mul(gi3, gi3));
+    // |small| ≈ |det|/(|P| + |S| + |o|), |large| ≈ |P| + |S| + |o|, both to a factor of two
+    const large3 = f64x2.add(f64x2.add(f64x2.abs(gp3), f64x2.abs(gs3)), f64x2.sqrt(o3));
+    const small3 = f64x2.div(f64x2.abs(f64x2.sub(f64x2.mul(gp3, gs3), o3)), large3);
+    const size3 = v128.bitselect(large3, small3, pair3);
+    const less3 = f64x2.lt(size3, best3);
+    if (v128.any_true(less3)) {
+      best3 = v128.bitselect(size3, best3, less3);
+      v128.store(rows, v128.bitselect(index, v128.load(rows, 48), less3), 48);
+      v128.store(meetP, v128.bitselect(gp3, v128.load(meetP, 48), less3), 48);
+      v128.store(meetS, v128.bitselect(gs3, v128.load(meetS, 48), less3), 48);
+      v128.store(meetRe, v128.bitselect(gr3, v128.load(meetRe, 48), less3), 48);
+      v128.store(meetIm, v128.bitselect(gi3, v128.load(meetIm, 48), less3), 48);
+    }
+    const p3 = f64x2.sub(f64x2.sub(a, x3), tp3);
+    const s3 = f64x2.sub(f64x2.sub(b, x3), ts3);
+    const r3 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p3, s3), f64x2.mul(c3, c3))));
+    const u3 = f64x2.mul(s3, r3);
+    const t3 = f64x2.mul(p3, r3);
+    const w3 = f64x2.mul(c3, r3);
+    v128.store(to, u3, 432);
+    v128.store(to, t3, 496);
+    v128.store(to, w3, 560);
+    tp3 = f64x2.mul(e2, u3);
+    ts3 = f64x2.mul(f2, t3);
+    c3 = flush(f64x2.mul(ef, w3));
     to -= BLOCK_BYTES;
     from -= FOLD_BYTES;
-    const a = v128.load64_splat(from, 0);
-    const b = v128.load64_splat(from, 8);
-    const r0 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p0, s0), f64x2.mul(c0, c0))));
-    const r1 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p1, s1), f64x2.mul(c1, c1))));
-    const r2 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p2, s2), f64x2.mul(c2, c2))));
-    const r3 = f64x2.div(one, guard(f64x2.sub(f64x2.mul(p3, s3), f64x2.mul(c3, c3))));
-    const t0 = f64x2.mul(p0, r0);
-    p0 = f64x2.sub(f64x2.sub(a, x0), f64x2.mul(e2, f64x2.mul(s0, r0)));
-    s0 = f64x2.sub(f64x2.sub(b, x0), f64x2.mul(f2, t0));
-    c0 = flush(f64x2.mul(ef, f64x2.mul(c0, r0)));
-    const t1 = f64x2.mul(p1, r1);
-    p1 = f64x2.sub(f64x2.sub(a, x1), f64x2.mul(e2, f64x2.mul(s1, r1)));
-    s1 = f64x2.sub(f64x2.sub(b, x1), f64x2.mul(f2, t1));
-    c1 = flush(f64x2.mul(ef, f64x2.mul(c1, r1)));
-    const t2 = f64x2.mul(p2, r2);
-    p2 = f64x2.sub(f64x2.sub(a, x2), f64x2.mul(e2, f64x2.mul(s2, r2)));
-    s2 = f64x2.sub(f64x2.sub(b, x2), f64x2.mul(f2, t2));
-    c2 = flush(f64x2.mul(ef, f64x2.mul(c2, r2)));
-    const t3 = f64x2.mul(p3, r3);
-    p3 = f64x2.sub(f64x2.sub(a, x3), f64x2.mul(e2, f64x2.mul(s3, r3)));
-    s3 = f64x2.sub(f64x2.sub(b, x3), f64x2.mul(f2, t3));
-    c3 = flush(f64x2.mul(ef, f64x2.mul(c3, r3)));
   }
-}
-
-// Γ of one block and lane, unpacked by `meet`
-let gammaP: f64 = 0;
-let gammaS: f64 = 0;
-let gammaRe: f64 = 0;
-let gammaIm: f64 = 0;
-/** Eigenvalues of Γ: the smaller and the larger in absolute value. */
-let small: f64 = 0;
-let large: f64 = 0;
-
-@inline
-function meet(chain: Chain, fold: usize, i: i32, lane: i32, x: f64, workspace: usize): void {
-  const q = workspace + <usize>i * BLOCK_BYTES + (<usize>lane << 3);
-  const c = load<f64>(q, 128);
-  const folded = fold + <usize>i * FOLD_BYTES;
-  gammaP = load<f64>(q) + load<f64>(q, 192) - (load<f64>(folded) - x);
-  gammaS = load<f64>(q, 64) + load<f64>(q, 256) - (load<f64>(folded, 8) - x);
-  gammaRe = c * chain.cosine + load<f64>(q, 320);
-  gammaIm = c * chain.sine;
-  const coupling = gammaRe * gammaRe + gammaIm * gammaIm;
-  const sum = gammaP + gammaS;
-  const difference = gammaP - gammaS;
-  const root = Math.sqrt(difference * difference + 4 * coupling);
-  large = 0.5 * (sum + (sum < 0 ? -root : root));
-  small = large != 0 ? (gammaP * gammaS - coupling) / large : 0;
-}
-
-function bestRow(chain: Chain, fold: usize, blocks: i32, lane: i32, x: f64, pair: bool, workspace: usize): void {
-  let best = Infinity;
-  let where = 0;
-  for (let i = 0; i < blocks; i++) {
-    meet(chain, fold, i, lane, x, workspace);
-    const size = Math.abs(pair ? large : small);
-    if (size < best) {
-      best = size;
-      where = i;
-    }
-  }
-  put(bestOf, lane, best);
-  put(whereOf, lane, <f64>where);
 }
 
 function finish(
   chain: Chain, fold: usize, start: i32, blocks: i32, lane: i32, x: f64, mode: i32,
   next: usize, residual: usize, vectors: usize, workspace: usize,
 ): void {
-  const r = <i32>at(whereOf, lane);
-  meet(chain, fold, r, lane, x, workspace);
+  const r = <i32>at(rows, lane);
+  const p = at(meetP, lane), s = at(meetS, lane), re = at(meetRe, lane), im = at(meetIm, lane);
+  const coupling = re * re + im * im;
+  const root = Math.sqrt((p - s) * (p - s) + 4 * coupling);
+  const large = 0.5 * (p + s + (p + s < 0 ? -root : root));
+  const small = large != 0 ? (p * s - coupling) / large : 0;
   const gamma = mode == PAIR_SECOND ? large : small;
   // (P − γ) u + (re + i·im) w = 0 or (re − i·im) u + (S − γ) w = 0: the row with the larger entries decides
   let ur: f64, ui: f64, wr: f64, wi: f64;
-  if (Math.abs(gammaP - gamma) > Math.abs(gammaS - gamma)) {
-    ur = -gammaRe; ui = -gammaIm; wr = gammaP - gamma; wi = 0;
+  if (Math.abs(p - gamma) > Math.abs(s - gamma)) {
+    ur = -re; ui = -im; wr = p - gamma; wi = 0;
   } else {
-    ur = gammaS - gamma; ui = 0; wr = -gammaRe; wi = gammaIm;
+    ur = s - gamma; ui = 0; wr = -re; wi = im;
   }
   let sum = ur * ur + ui * ui + wr * wr + wi * wi;
   if (!(sum > 0)) {
@@ -250,64 +355,61 @@ function finish(
   const unit = 1 / Math.sqrt(sum);
   ur *= unit; ui *= unit; wr *= unit; wi *= unit;
   const vector = vectors != 0 ? <usize>load<u32>(vectors + (<usize>lane << 2)) : 0;
-  if (vector != 0) putBlock(chain, start, vector, r, ur, ui, wr, wi);
-  sum = 1;
-  // towards the corner: real in (u, e^{iθ} w)
-  let yr = ur, yi = ui;
-  let vr = chain.cosine * wr - chain.sine * wi;
-  let vi = chain.cosine * wi + chain.sine * wr;
+  if (vector != 0) putBlock(chain, start, vector, r, both(ur, ui), both(wr, wi));
+  const offset = <usize>lane << 3;
+  let total = f64x2.splat(0);
+  // towards the corner: real in (u, e^{iθ} w); lanes of the vectors are re and im
+  let y = both(ur, ui);
+  let v = both(chain.cosine * wr - chain.sine * wi, chain.cosine * wi + chain.sine * wr);
   for (let i = r - 1; i >= 0; i--) {
-    const e = load<f64>(fold + <usize>(i + 1) * FOLD_BYTES, 40);
-    const f = load<f64>(fold + <usize>(i + 1) * FOLD_BYTES, 48);
-    const q = workspace + <usize>i * BLOCK_BYTES + (<usize>lane << 3);
-    const p = load<f64>(q), s = load<f64>(q, 64), c = load<f64>(q, 128);
-    let det = p * s - c * c;
-    if (Math.abs(det) < DETERMINANT_FLOOR) det = DETERMINANT_FLOOR;
-    const inverse = -1 / det;
-    const a = e * s * inverse, b = f * c * inverse, g = e * c * inverse, h = f * p * inverse;
-    const nr = flushed(a * yr - b * vr), ni = flushed(a * yi - b * vi);
-    vr = flushed(h * vr - g * yr);
-    vi = flushed(h * vi - g * yi);
-    yr = nr; yi = ni;
-    sum += yr * yr + yi * yi + vr * vr + vi * vi;
-    if (vector != 0) putBlock(chain, start, vector, i, yr, yi, chain.cosine * vr + chain.sine * vi, chain.cosine * vi - chain.sine * vr);
+    const bonds = fold + <usize>(i + 1) * FOLD_BYTES;
+    const q = workspace + <usize>i * BLOCK_BYTES + offset;
+    const ey = f64x2.mul(v128.load64_splat(bonds, 40), y);
+    const fv = f64x2.mul(v128.load64_splat(bonds, 48), v);
+    const c = v128.load64_splat(q, 320);
+    y = flush(f64x2.sub(f64x2.mul(c, fv), f64x2.mul(v128.load64_splat(q, 192), ey)));
+    v = flush(f64x2.sub(f64x2.mul(c, ey), f64x2.mul(v128.load64_splat(q, 256), fv)));
+    total = f64x2.add(total, f64x2.add(f64x2.mul(y, y), f64x2.mul(v, v)));
+    if (vector != 0) {
+      const vr = f64x2.extract_lane(v, 0), vi = f64x2.extract_lane(v, 1);
+      putBlock(chain, start, vector, i, y, both(chain.cosine * vr + chain.sine * vi, chain.cosine * vi - chain.sine * vr));
+    }
   }
   // towards the middle: real in (u, w)
-  yr = ur; yi = ui; vr = wr; vi = wi;
+  y = both(ur, ui);
+  v = both(wr, wi);
   for (let i = r + 1; i < blocks; i++) {
-    const e = load<f64>(fold + <usize>i * FOLD_BYTES, 40);
-    const f = load<f64>(fold + <usize>i * FOLD_BYTES, 48);
-    const q = workspace + <usize>i * BLOCK_BYTES + (<usize>lane << 3);
-    const p = load<f64>(q, 192), s = load<f64>(q, 256), c = load<f64>(q, 320);
-    let det = p * s - c * c;
-    if (Math.abs(det) < DETERMINANT_FLOOR) det = DETERMINANT_FLOOR;
-    const inverse = -1 / det;
-    const a = e * s * inverse, b = f * c * inverse, g = e * c * inverse, h = f * p * inverse;
-    const nr = flushed(a * yr - b * vr), ni = flushed(a * yi - b * vi);
-    vr = flushed(h * vr - g * yr);
-    vi = flushed(h * vi - g * yi);
-    yr = nr; yi = ni;
-    sum += yr * yr + yi * yi + vr * vr + vi * vi;
-    if (vector != 0) putBlock(chain, start, vector, i, yr, yi, vr, vi);
+    const bonds = fold + <usize>i * FOLD_BYTES;
+    const q = workspace + <usize>i * BLOCK_BYTES + offset;
+    const ey = f64x2.mul(v128.load64_splat(bonds, 40), y);
+    const fv = f64x2.mul(v128.load64_splat(bonds, 48), v);
+    const c = v128.load64_splat(q, 512);
+    y = flush(f64x2.sub(f64x2.mul(c, fv), f64x2.mul(v128.load64_splat(q, 384), ey)));
+    v = flush(f64x2.sub(f64x2.mul(c, ey), f64x2.mul(v128.load64_splat(q, 448), fv)));
+    total = f64x2.add(total, f64x2.add(f64x2.mul(y, y), f64x2.mul(v, v)));
+    if (vector != 0) putBlock(chain, start, vector, i, y, v);
   }
+  sum = 1 + f64x2.extract_lane(total, 0) + f64x2.extract_lane(total, 1);
   put(next, lane, x + gamma / sum);
   put(residual, lane, Math.abs(gamma) / Math.sqrt(sum));
   if (vector == 0) return;
-  const scale = 1 / Math.sqrt(sum);
-  for (let i = 0; i < 2 * chain.n; i++) put(vector, i, at(vector, i) * scale);
+  const scale = f64x2.splat(1 / Math.sqrt(sum));
+  for (let p = vector, end = vector + (<usize>chain.n << 4); p < end; p += 16) v128.store(p, f64x2.mul(v128.load(p), scale));
 }
 
 /** Writes block i of a fold. The fold has its phase on the bond before `start`; sites below it take e^{iθ}. */
 @inline
-function putBlock(chain: Chain, start: i32, vector: usize, i: i32, ur: f64, ui: f64, wr: f64, wi: f64): void {
-  putSite(chain, vector, start + i, ur, ui);
-  putSite(chain, vector, start + chain.n - 1 - i, wr, wi);
+function putBlock(chain: Chain, start: i32, vector: usize, i: i32, u: v128, w: v128): void {
+  putSite(chain, vector, start + i, u);
+  putSite(chain, vector, start + chain.n - 1 - i, w);
 }
 
 @inline
-function putSite(chain: Chain, vector: usize, site: i32, re: f64, im: f64): void {
-  const beyond = site >= chain.n;
-  const to = vector + (<usize>(beyond ? site - chain.n : site) << 4);
-  store<f64>(to, beyond ? chain.cosine * re - chain.sine * im : re);
-  store<f64>(to, beyond ? chain.cosine * im + chain.sine * re : im, 8);
+function putSite(chain: Chain, vector: usize, site: i32, z: v128): void {
+  if (site < chain.n) {
+    v128.store(vector + (<usize>site << 4), z);
+    return;
+  }
+  const re = f64x2.extract_lane(z, 0), im = f64x2.extract_lane(z, 1);
+  v128.store(vector + (<usize>(site - chain.n) << 4), both(chain.cosine * re - chain.sine * im, chain.cosine * im + chain.sine * re));
 }

@@ -39,7 +39,7 @@ export function twistedStep(
   const d = chain.diagonal;
   const b = chain.bonds;
   const block = <usize>n * 64;
-  const pivots = workspace; // q⁺[i], later unused
+  const pivots = workspace; // q⁺[i], then the vectors
   const down = workspace + block; // b[i+1]/q⁺[i], multiplier from site i+1 to i
   const up = down + block; // b[i]/q⁻[i], multiplier from site i−1 to i
   const x0 = v128.load(shifts, 0);
@@ -140,47 +140,105 @@ export function twistedStep(
     m3 = f64x2.div(before, q3);
     v128.store(up + row, m3, 48);
   }
-  finish(chain, 0, f64x2.extract_lane(x0, 0), f64x2.extract_lane(gamma0, 0), <i32>f64x2.extract_lane(where0, 0), next, residual, vectors, down, up);
-  finish(chain, 1, f64x2.extract_lane(x0, 1), f64x2.extract_lane(gamma0, 1), <i32>f64x2.extract_lane(where0, 1), next, residual, vectors, down, up);
-  finish(chain, 2, f64x2.extract_lane(x1, 0), f64x2.extract_lane(gamma1, 0), <i32>f64x2.extract_lane(where1, 0), next, residual, vectors, down, up);
-  finish(chain, 3, f64x2.extract_lane(x1, 1), f64x2.extract_lane(gamma1, 1), <i32>f64x2.extract_lane(where1, 1), next, residual, vectors, down, up);
-  finish(chain, 4, f64x2.extract_lane(x2, 0), f64x2.extract_lane(gamma2, 0), <i32>f64x2.extract_lane(where2, 0), next, residual, vectors, down, up);
-  finish(chain, 5, f64x2.extract_lane(x2, 1), f64x2.extract_lane(gamma2, 1), <i32>f64x2.extract_lane(where2, 1), next, residual, vectors, down, up);
-  finish(chain, 6, f64x2.extract_lane(x3, 0), f64x2.extract_lane(gamma3, 0), <i32>f64x2.extract_lane(where3, 0), next, residual, vectors, down, up);
-  finish(chain, 7, f64x2.extract_lane(x3, 1), f64x2.extract_lane(gamma3, 1), <i32>f64x2.extract_lane(where3, 1), next, residual, vectors, down, up);
+  v128.store(gammas, gamma0, 0);
+  v128.store(rows, where0, 0);
+  v128.store(gammas, gamma1, 16);
+  v128.store(rows, where1, 16);
+  v128.store(gammas, gamma2, 32);
+  v128.store(rows, where2, 32);
+  v128.store(gammas, gamma3, 48);
+  v128.store(rows, where3, 48);
+  outward(n, pivots, down, up);
+  finish(n, shifts, next, residual, vectors, pivots);
 }
 
-/** A decaying tail ends in 0 before it becomes a row of slow subnormal numbers. */
+const gammas: usize = memory.data(64, 16);
+const rows: usize = memory.data(64, 16);
+const norms: usize = memory.data(64, 16);
+
+/** A decaying tail ends in 0 before it becomes a row of slow subnormal numbers: clears |z| below 1e-146. */
 @inline
-export function flushed(z: f64): f64 {
-  return Math.abs(z) < 1e-140 ? 0 : z;
+function flush(z: v128): v128 {
+  const tiny = f64x2.splat(1e-130);
+  return f64x2.sub(f64x2.add(z, tiny), tiny);
 }
 
-/** The vector's norm (and the vector, if asked) outward from the twist, and the improved level. */
-function finish(
-  chain: Chain, lane: i32, x: f64, gamma: f64, r: i32,
-  next: usize, residual: usize, vectors: usize, down: usize, up: usize,
-): void {
-  const n = chain.n;
-  const offset = <usize>lane << 3;
-  const vector = vectors != 0 ? <usize>load<u32>(vectors + (<usize>lane << 2)) : 0;
-  let sum: f64 = 1;
-  let z: f64 = 1;
-  if (vector != 0) put(vector, r, 1);
-  for (let i = r - 1; i >= 0; i--) {
-    z = flushed(-z * load<f64>(down + (<usize>i << 6) + offset));
-    if (vector != 0) put(vector, i, z);
-    sum += z * z;
+/** All eight vectors from their twists to both ends, in place of the pivots, and their squared norms. */
+function outward(n: i32, z: usize, down: usize, up: usize): void {
+  const one = f64x2.splat(1);
+  const r0 = v128.load(rows, 0);
+  let z0 = f64x2.splat(0);
+  let n0 = f64x2.splat(0);
+  const r1 = v128.load(rows, 16);
+  let z1 = f64x2.splat(0);
+  let n1 = f64x2.splat(0);
+  const r2 = v128.load(rows, 32);
+  let z2 = f64x2.splat(0);
+  let n2 = f64x2.splat(0);
+  const r3 = v128.load(rows, 48);
+  let z3 = f64x2.splat(0);
+  let n3 = f64x2.splat(0);
+  for (let i = n - 1; i >= 0; i--) {
+    const row = <usize>i << 6;
+    const index = f64x2.splat(<f64>i);
+    z0 = flush(f64x2.neg(f64x2.mul(z0, v128.load(down + row, 0))));
+    z0 = v128.bitselect(one, z0, f64x2.eq(index, r0));
+    n0 = f64x2.add(n0, f64x2.mul(z0, z0));
+    v128.store(z + row, z0, 0);
+    z1 = flush(f64x2.neg(f64x2.mul(z1, v128.load(down + row, 16))));
+    z1 = v128.bitselect(one, z1, f64x2.eq(index, r1));
+    n1 = f64x2.add(n1, f64x2.mul(z1, z1));
+    v128.store(z + row, z1, 16);
+    z2 = flush(f64x2.neg(f64x2.mul(z2, v128.load(down + row, 32))));
+    z2 = v128.bitselect(one, z2, f64x2.eq(index, r2));
+    n2 = f64x2.add(n2, f64x2.mul(z2, z2));
+    v128.store(z + row, z2, 32);
+    z3 = flush(f64x2.neg(f64x2.mul(z3, v128.load(down + row, 48))));
+    z3 = v128.bitselect(one, z3, f64x2.eq(index, r3));
+    n3 = f64x2.add(n3, f64x2.mul(z3, z3));
+    v128.store(z + row, z3, 48);
   }
-  z = 1;
-  for (let i = r + 1; i < n; i++) {
-    z = flushed(-z * load<f64>(up + (<usize>i << 6) + offset));
-    if (vector != 0) put(vector, i, z);
-    sum += z * z;
+  z0 = f64x2.splat(0);
+  z1 = f64x2.splat(0);
+  z2 = f64x2.splat(0);
+  z3 = f64x2.splat(0);
+  for (let i = 0; i < n; i++) {
+    const row = <usize>i << 6;
+    const index = f64x2.splat(<f64>i);
+    z0 = flush(f64x2.neg(f64x2.mul(z0, v128.load(up + row, 0))));
+    n0 = f64x2.add(n0, f64x2.mul(z0, z0));
+    v128.store(z + row, f64x2.add(v128.load(z + row, 0), z0), 0);
+    z0 = v128.bitselect(one, z0, f64x2.eq(index, r0));
+    z1 = flush(f64x2.neg(f64x2.mul(z1, v128.load(up + row, 16))));
+    n1 = f64x2.add(n1, f64x2.mul(z1, z1));
+    v128.store(z + row, f64x2.add(v128.load(z + row, 16), z1), 16);
+    z1 = v128.bitselect(one, z1, f64x2.eq(index, r1));
+    z2 = flush(f64x2.neg(f64x2.mul(z2, v128.load(up + row, 32))));
+    n2 = f64x2.add(n2, f64x2.mul(z2, z2));
+    v128.store(z + row, f64x2.add(v128.load(z + row, 32), z2), 32);
+    z2 = v128.bitselect(one, z2, f64x2.eq(index, r2));
+    z3 = flush(f64x2.neg(f64x2.mul(z3, v128.load(up + row, 48))));
+    n3 = f64x2.add(n3, f64x2.mul(z3, z3));
+    v128.store(z + row, f64x2.add(v128.load(z + row, 48), z3), 48);
+    z3 = v128.bitselect(one, z3, f64x2.eq(index, r3));
   }
-  put(next, lane, x + gamma / sum);
-  put(residual, lane, Math.abs(gamma) / Math.sqrt(sum));
-  if (vector == 0) return;
-  const scale = 1 / Math.sqrt(sum);
-  for (let i = 0; i < n; i++) put(vector, i, at(vector, i) * scale);
+  v128.store(norms, n0, 0);
+  v128.store(norms, n1, 16);
+  v128.store(norms, n2, 32);
+  v128.store(norms, n3, 48);
+}
+
+/** Improved levels, residuals, and the unit vectors that were asked for. */
+function finish(n: i32, shifts: usize, next: usize, residual: usize, vectors: usize, z: usize): void {
+  for (let lane = 0; lane < 8; lane++) {
+    const sum = at(norms, lane);
+    const gamma = at(gammas, lane);
+    put(next, lane, at(shifts, lane) + gamma / sum);
+    put(residual, lane, Math.abs(gamma) / Math.sqrt(sum));
+    const vector = vectors != 0 ? <usize>load<u32>(vectors + (<usize>lane << 2)) : 0;
+    if (vector == 0) continue;
+    const scale = 1 / Math.sqrt(sum);
+    const from = z + (<usize>lane << 3);
+    for (let i = 0; i < n; i++) put(vector, i, load<f64>(from + (<usize>i << 6)) * scale);
+  }
 }

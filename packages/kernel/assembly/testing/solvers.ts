@@ -22,16 +22,16 @@ export function testChain(n: i32, closed: i32, diagonal: usize, bonds: usize, th
 export function testCounts(chain: usize, shifts: usize, counts: usize): bool {
   return chainCounts(changetype<Chain>(chain), shifts, counts);
 }
-export function testLevels(chain: usize, first: i32, count: i32, guesses: usize, widths: usize, values: usize, errors: usize): bool {
-  return levelsByIndex(changetype<Chain>(chain), first, count, guesses, widths, values, errors);
+export function testLevels(chain: usize, first: i32, count: i32, guesses: usize, values: usize, errors: usize, vectors: usize, fresh: usize): bool {
+  return levelsByIndex(changetype<Chain>(chain), first, count, guesses, values, errors, vectors, fresh);
 }
 import { BandMatrix, newBand, sealBand, setEntry } from "../solvers/band-matrix";
 import { countBelow } from "../solvers/band-inertia";
 import { bandRadius, bandWindow } from "../solvers/band-levels";
 import { levelVectors } from "../solvers/chain-vectors";
 
-export function testVectors(chain: usize, count: i32, values: usize, errors: usize, vectors: usize, residuals: usize, cluster: usize): bool {
-  return levelVectors(changetype<Chain>(chain), count, values, errors, vectors, residuals, cluster);
+export function testVectors(chain: usize, count: i32, values: usize, errors: usize, vectors: usize, fresh: usize, residuals: usize, cluster: usize): bool {
+  return levelVectors(changetype<Chain>(chain), count, values, errors, vectors, fresh, residuals, cluster);
 }
 export function testBand(n: i32, width: i32): usize {
   return changetype<usize>(newBand(n, width));

@@ -10,7 +10,7 @@
 import { at, put } from "../../doubles";
 import { Chain } from "../../solvers/chain";
 import { jacobiEigenvalues } from "../../solvers/jacobi";
-import { vectorLength } from "../../solvers/chain-vectors";
+import { vectorLength } from "../../solvers/chain-levels";
 import { mark, release, reserve } from "../../arena";
 import { componentSign, Grid } from "./grid";
 import { ARMCHAIR, edge, INFINITE_MASS, valleyCode, velocity, widthNm } from "./parameters";

@@ -11,11 +11,11 @@ import { fail } from "../../diagnostic";
 import { INERTIA_MISMATCH, NOT_CONVERGED, OK } from "../../status";
 import { Chain, chainCounts } from "../../solvers/chain";
 import { intAt, putInt } from "../../solvers/chain-brackets";
-import { levelsByIndex } from "../../solvers/chain-levels";
-import { clusterSize, levelVectors, vectorLength } from "../../solvers/chain-vectors";
+import { levelsByIndex, vectorLength } from "../../solvers/chain-levels";
+import { clusterSize, levelVectors } from "../../solvers/chain-vectors";
 import { clusterVelocities, valleyShare } from "./expectation";
 import { extrapolate, limitError, limitHolds, limitValue } from "./extrapolate";
-import { chainOf, fillChain, Grid, makeGrid } from "./grid";
+import { chainOf, fillChain, Grid, makeGrid, siteCount } from "./grid";
 import {
   cells, gridCount, isWindow, nearestCount, nearestEnergy, spinShift, valleySign, velocity, widthNm, windowMax, windowMin,
 } from "./parameters";
@@ -29,6 +29,13 @@ export class Setting {
   chains: usize;
   /** Radius that held the nearest levels at the last point. */
   radius: f64;
+  /** Levels and slopes of the last point per grid, by signed index: guesses for the next one. */
+  lastK: f64;
+  lastFirst: i32;
+  lastCount: i32;
+  lastCapacity: i32;
+  lastLevels: usize;
+  lastSlopes: usize;
 }
 
 export function newSetting(valleyRow: i32, spinRow: i32): Setting {
@@ -38,6 +45,10 @@ export function newSetting(valleyRow: i32, spinRow: i32): Setting {
   setting.grids = reserve(16);
   setting.chains = reserve(16);
   setting.radius = 0;
+  setting.lastCount = 0;
+  setting.lastCapacity = siteCount(cells);
+  setting.lastLevels = reserveF64(3 * <u64>setting.lastCapacity);
+  setting.lastSlopes = reserveF64(3 * <u64>setting.lastCapacity);
   for (let g = 0; g < gridCount; g++) {
     const grid = makeGrid(cells << g, setting.valley, spinShift(spinRow));
     store<u32>(setting.grids + (<usize>g << 2), <u32>changetype<usize>(grid));
@@ -114,28 +125,20 @@ export function solveRange(setting: Setting, point: Point, k: f64, first: i32, c
   point.chosen = reserve(<u64>count * 4);
   const levels = reserveF64(3 * count); // per grid
   const slopes = reserveF64(3 * count);
-  const widths = reserveF64(count);
   const guesses = reserveF64(count);
+  const fresh = reserve(<u64>count * 4);
   const row = <usize>count << 3;
   for (let g = 0; g < gridCount; g++) {
     const chain = chainAt(setting, g);
-    const grid = gridAt(setting, g);
     const room = mark();
-    fillChain(chain, grid, setting.valley, k);
+    fillChain(chain, gridAt(setting, g), setting.valley, k);
     const here = levels + <usize>g * row;
-    if (g == 2) {
-      // a second-order sequence loses three quarters of its error per grid
-      for (let i = 0; i < count; i++) {
-        const step = at(levels + row, i) - at(levels, i);
-        put(guesses, i, at(levels + row, i) + 0.25 * step);
-        put(widths, i, 0.02 * Math.abs(step));
-      }
-    }
-    if (!levelsByIndex(chain, first + grid.half, count, g == 2 ? guesses : 0, widths, here, point.proofs)) {
+    const vectors = reserveF64(<u64>count * vectorLength(chain));
+    const guessed = guessLevels(setting, g, k, first, count, levels, guesses);
+    if (!levelsByIndex(chain, first + gridAt(setting, g).half, count, guessed ? guesses : 0, here, point.proofs, vectors, fresh)) {
       return fail(NOT_CONVERGED, "Counting levels of a ring failed: its elimination grows from every site.");
     }
-    const vectors = reserveF64(<u64>count * vectorLength(chain));
-    if (!levelVectors(chain, count, here, point.proofs, vectors, point.residuals, point.cluster)) {
+    if (!levelVectors(chain, count, here, point.proofs, vectors, fresh, point.residuals, point.cluster)) {
       return fail(NOT_CONVERGED, "The residual of a level stays above its bound.");
     }
     for (let i = 0; i < count; ) {
@@ -153,8 +156,51 @@ export function solveRange(setting: Setting, point: Point, k: f64, first: i32, c
       release(room);
     }
   }
+  remember(setting, k, first, count, levels, slopes);
   combine(setting, point, levels, slopes);
   return OK;
+}
+
+/**
+ * Where the levels of grid g should lie: along the last point's slope, and off it by as much as the coarser grid was;
+ * without a last point, on the third grid, by the second-order law of the first two. False: no guess.
+ */
+function guessLevels(setting: Setting, g: i32, k: f64, first: i32, count: i32, levels: usize, guesses: usize): bool {
+  const row = <usize>count << 3;
+  const known = setting.lastCount > 0 && first >= setting.lastFirst && first + count <= setting.lastFirst + setting.lastCount;
+  if (!known) {
+    if (g != 2) return false;
+    for (let i = 0; i < count; i++) {
+      const second = at(levels + row, i);
+      put(guesses, i, second + 0.25 * (second - at(levels, i)));
+    }
+    return true;
+  }
+  const skip = first - setting.lastFirst;
+  for (let i = 0; i < count; i++) {
+    let guess = along(setting, g, skip + i, k);
+    if (g > 0) guess += at(levels + <usize>(g - 1) * row, i) - along(setting, g - 1, skip + i, k);
+    put(guesses, i, guess);
+  }
+  return true;
+}
+
+@inline
+function along(setting: Setting, g: i32, i: i32, k: f64): f64 {
+  const offset = <usize>g * <usize>setting.lastCapacity * 8;
+  return at(setting.lastLevels + offset, i) + at(setting.lastSlopes + offset, i) * (k - setting.lastK);
+}
+
+function remember(setting: Setting, k: f64, first: i32, count: i32, levels: usize, slopes: usize): void {
+  setting.lastK = k;
+  setting.lastFirst = first;
+  setting.lastCount = min(count, setting.lastCapacity);
+  const bytes = <usize>setting.lastCount << 3;
+  for (let g = 0; g < gridCount; g++) {
+    const offset = <usize>g * <usize>setting.lastCapacity * 8;
+    memory.copy(setting.lastLevels + offset, levels + <usize>g * <usize>count * 8, bytes);
+    memory.copy(setting.lastSlopes + offset, slopes + <usize>g * <usize>count * 8, bytes);
+  }
 }
 
 function fillShares(setting: Setting, point: Point, chain: Chain, vectors: usize): void {

@@ -9,7 +9,7 @@
 import { release, reserve } from "../../arena";
 import { at, put } from "../../doubles";
 import { intAt } from "../../solvers/chain-brackets";
-import { vectorLength } from "../../solvers/chain-vectors";
+import { vectorLength } from "../../solvers/chain-levels";
 import { addDensities, positionCount } from "./expectation";
 import { finest, finestChain, Point, Setting } from "./point";
 
