@@ -55,7 +55,7 @@ describe.skipIf(!chromiumPath)('every page', () => {
     const { sweepId } = await session.call<{ sweepId: string }>('POST', '/sweeps', {
       title: 'Widths',
       specification: { model: model?.id, parameters: example?.parameters, numerics: example?.numerics ?? {} },
-      axes: [{ pointers: ['/parameters/width/count'], values: [[10], [11], [12]] }],
+      axes: [{ pointers: ['/width/count'], values: [[10], [11], [12]] }],
     });
     paths.push(
       '/',

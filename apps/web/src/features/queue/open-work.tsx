@@ -61,7 +61,7 @@ function WorkRow({ row }: { row: Submission }) {
       </span>
       <span className={`min-w-0 sm:truncate max-sm:order-1 ${row.mine ? 'font-semibold' : ''}`}>
         {row.mine && to ? (
-          <Link to={to} className="border-transparent border-b hover:border-ink" title={name}>
+          <Link to={to} className="link" title={name}>
             {name}
           </Link>
         ) : (
