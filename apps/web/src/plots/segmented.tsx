@@ -25,7 +25,7 @@ export function Segmented<Value extends string>({
           <label
             key={option.value}
             title={option.help}
-            className="relative flex min-h-7 flex-auto cursor-pointer items-center justify-center bg-field px-2.5 py-0.5 text-center text-ink2 text-small leading-tight has-checked:bg-ink has-checked:font-semibold has-checked:text-ground has-focus-visible:outline-2 has-focus-visible:outline-ink has-focus-visible:outline-offset-2 max-margin:min-h-[34px]"
+            className="relative flex min-h-7 flex-auto cursor-pointer items-center justify-center bg-field px-2 py-0.5 text-center text-ink2 text-small leading-tight has-checked:bg-ink has-checked:font-semibold has-checked:text-ground has-focus-visible:outline-2 has-focus-visible:outline-ink has-focus-visible:outline-offset-2 max-margin:min-h-[34px]"
           >
             <input
               type="radio"

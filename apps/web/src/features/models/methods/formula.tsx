@@ -14,15 +14,26 @@ const load = () => {
 export function Formula({ tex, display = false }: { tex: string; display?: boolean }) {
   const ref = useRef<HTMLSpanElement | null>(null);
   useEffect(() => {
+    const element = ref.current;
+    if (!element) return;
     let current = true;
+    // what is wider than its place scrolls, and what scrolls must be reachable by keys
+    const measure = () => {
+      if (display && element.scrollWidth > element.clientWidth) element.tabIndex = 0;
+      else element.removeAttribute('tabindex');
+    };
     load().then(
       (katex) => {
-        if (current && ref.current) katex.render(tex, ref.current, { displayMode: display, throwOnError: false });
+        if (!current) return;
+        katex.render(tex, element, { displayMode: display, throwOnError: false });
+        measure();
       },
       () => undefined,
     );
+    addEventListener('resize', measure);
     return () => {
       current = false;
+      removeEventListener('resize', measure);
     };
   }, [tex, display]);
   return (

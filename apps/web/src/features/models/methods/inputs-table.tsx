@@ -1,5 +1,6 @@
 import type { Field } from '@nightcone/models';
 import { SymbolText } from '../../../plots/symbol-text.tsx';
+import { ScrollRegion } from './scroll-region.tsx';
 
 interface Row {
   name: string;
@@ -12,7 +13,7 @@ interface Row {
 /** Every input with its unit, default and range, straight from the definition. */
 export function InputsTable({ fields, caption }: { fields: readonly Field[]; caption: string }) {
   return (
-    <section className="overflow-x-auto" aria-label={caption}>
+    <ScrollRegion label={`Table of ${caption.toLowerCase()}`}>
       <table className="mt-2 w-full min-w-[44rem] text-small">
         <caption className="sr-only">{caption}</caption>
         <thead>
@@ -55,7 +56,7 @@ export function InputsTable({ fields, caption }: { fields: readonly Field[]; cap
           ))}
         </tbody>
       </table>
-    </section>
+    </ScrollRegion>
   );
 }
 

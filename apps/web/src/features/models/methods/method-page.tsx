@@ -10,6 +10,7 @@ import { useSession } from '../../../lib/session.ts';
 import { SymbolText } from '../../../plots/symbol-text.tsx';
 import { InputsTable } from './inputs-table.tsx';
 import { Prose } from './prose.tsx';
+import { ScrollRegion } from './scroll-region.tsx';
 
 /** Equations, units, numerics, validity, sources and checks of one model, from its definition. */
 export function Component() {
@@ -129,7 +130,7 @@ function Results({ model }: { model: ModelDefinition }) {
   if (model.results.length === 0) return null;
   return (
     <Part id="results" title="Results">
-      <section className="overflow-x-auto" aria-label="Results">
+      <ScrollRegion label="Table of results">
         <table className="mt-2 w-full min-w-[36rem] text-small">
           <thead>
             <tr className="border-rule border-b text-left">
@@ -164,7 +165,7 @@ function Results({ model }: { model: ModelDefinition }) {
             ))}
           </tbody>
         </table>
-      </section>
+      </ScrollRegion>
     </Part>
   );
 }

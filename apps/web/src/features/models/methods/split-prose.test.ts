@@ -18,3 +18,12 @@ test('paragraphs, inline and display formulas', () => {
 test('a lone dollar sign is text', () => {
   expect(splitProse('costs 5 $ today')).toEqual([[{ kind: 'text', text: 'costs 5 $ today' }]]);
 });
+
+test('emphasis', () => {
+  expect(splitProse('**Two layers** at U')).toEqual([
+    [
+      { kind: 'strong', text: 'Two layers' },
+      { kind: 'text', text: ' at U' },
+    ],
+  ]);
+});

@@ -40,7 +40,7 @@ export function ControlRow({
   );
   return (
     <div
-      className={`grid gap-x-1 py-1 sm:grid-cols-[1.6rem_7.4rem_minmax(0,1fr)] ${inline ? 'grid-cols-[1.6rem_6.4rem_minmax(0,1fr)] max-[359px]:grid-cols-[1.6rem_minmax(0,1fr)]' : 'grid-cols-[1.6rem_minmax(0,1fr)]'}`}
+      className={`grid gap-x-1 py-1 sm:grid-cols-[2.1rem_7.2rem_minmax(0,1fr)] ${inline ? 'grid-cols-[2.1rem_6.2rem_minmax(0,1fr)] max-[359px]:grid-cols-[2.1rem_minmax(0,1fr)]' : 'grid-cols-[2.1rem_minmax(0,1fr)]'}`}
       title={field.display?.help}
     >
       <span aria-hidden="true" className="pt-[3px]">

@@ -12,7 +12,7 @@ export function Component() {
       {models.map((model) => (
         <SheetRow key={model.id} divided={model !== models[0]}>
           <section aria-labelledby={`model-${model.id}`}>
-            <h2 id={`model-${model.id}`} className="text-h1">
+            <h2 id={`model-${model.id}`} className="text-[1.4rem] leading-8">
               <Link
                 to={`/question/${model.id}`}
                 className="font-medium underline decoration-1 decoration-rule underline-offset-4 hover:decoration-ink"

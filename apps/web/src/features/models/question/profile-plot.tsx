@@ -49,7 +49,7 @@ export function ProfilePlot({ value, unit, title }: { value: Json; unit: string;
   }, [value, unit, title, half, width]);
   const ends = [-half, half].map((u) => formatQuantity(profileAt(value as Profile, u), unit));
   return (
-    <figure className="mb-1 sm:pl-[9.2rem]">
+    <figure className="mb-1 sm:pl-[9.5rem]">
       <div ref={ref}>
         <svg width={width} height={150} aria-hidden="true" className="block overflow-visible">
           <PlotMarks geometry={geometry} />

@@ -48,6 +48,7 @@ export function QuantityControl({ name, field, value }: { name: string; field: F
             {...register(name)}
             id={id}
             type="text"
+            placeholder={field.type === 'list' ? 'none' : undefined}
             autoComplete="off"
             spellCheck={false}
             aria-invalid={error ? true : undefined}

@@ -110,7 +110,7 @@ export function QuestionSheet({
           className="@container"
           aria-label={`Question to ${model.title}`}
         >
-          <div className="@4xl:grid @4xl:grid-cols-[minmax(0,29.5rem)_minmax(0,1fr)] gap-x-8">
+          <div className="@4xl:grid @4xl:grid-cols-[minmax(0,31rem)_minmax(0,1fr)] gap-x-8">
             <div className="@4xl:order-2 @max-4xl:contents min-w-0">
               <div className="top-3 @4xl:sticky @max-4xl:contents">
                 <PreviewPane model={model} preview={preview} incomplete={previewed === null} place={place} />
