@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest';
-import { formatNumber, formatQuantity, formatWithError } from './quantity.ts';
+import { formatNumber, formatQuantity, formatSize, formatWithError } from './quantity.ts';
 
 test('the error decides the digits', () => {
   expect(formatWithError(226.4061, 0.0039)).toBe('226.406(4)');
@@ -21,4 +21,10 @@ test('numbers are neither padded nor rounded away', () => {
   expect(formatNumber(-1234567)).toBe('−1.235e6');
   expect(formatNumber(2.5e-7)).toBe('2.5e−7');
   expect(formatNumber(Number.NaN)).toBe('–');
+});
+
+test('sizes of errors have two figures', () => {
+  expect(formatSize(3.94e-6, 'eV')).toBe('3.9 µeV');
+  expect(formatSize(2.857e-10, 'eV')).toBe('2.9e−10 eV');
+  expect(formatSize(0, 'eV')).toBe('0 eV');
 });

@@ -45,3 +45,13 @@ export function formatQuantity(value: number, unit: string, error?: number | nul
   const number = formatWithError(value * shown.factor, error ? error * shown.factor : null);
   return shown.unit ? `${number} ${shown.unit}` : number;
 }
+
+/** The size of an error or residual: two figures with a prefix, a power of ten where it is far below one. */
+export function formatSize(value: number, unit: string): string {
+  const shown = displayUnit(unit, value);
+  const scaled = value * shown.factor;
+  const size = Math.abs(scaled);
+  const number = size > 0 && size < 0.1 ? minus(value.toExponential(1)) : formatNumber(scaled, 2);
+  const named = size > 0 && size < 0.1 ? unit : shown.unit;
+  return named ? `${number} ${named}` : number;
+}

@@ -40,9 +40,6 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
     `<defs><clipPath id="data"><rect x="${data.x}" y="${data.y}" width="${data.width}" height="${data.height}"/></clipPath></defs>`,
     `<rect width="${size.width}" height="${size.height}" fill="${palette.ground}"/>`,
     ...geometry.cells.map((cells) => cellsSvg(geometry, cells, palette)),
-    '<g clip-path="url(#data)" fill="none" stroke-linejoin="round">',
-    ...geometry.lines.map((line) => `<path d="${line.path}"${pen(line, palette)}/>`),
-    '</g>',
     ...geometry.rules.map((rule) => {
       const [x1, y1] = rule.from;
       const [x2, y2] = rule.to;
@@ -59,6 +56,9 @@ export function plotToSvg(plot: Plot, size: Size, options: SvgOptions = {}): str
         : '';
       return `<path d="M${x1},${y1}L${x2},${y2}" fill="none" stroke="${palette[roleStyles[rule.role].color]}"${dotted}/>${word}`;
     }),
+    '<g clip-path="url(#data)" fill="none" stroke-linejoin="round">',
+    ...geometry.lines.map((line) => `<path d="${line.path}"${pen(line, palette)}/>`),
+    '</g>',
     ...geometry.points.map((points) => pointsSvg(points, palette)),
     axesSvg(geometry, palette),
     '</svg>\n',

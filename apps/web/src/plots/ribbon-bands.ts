@@ -1,4 +1,4 @@
-import { formatQuantity, type LineMark, type Mark, type PointsMark, type Role } from '@nightcone/drawing';
+import { formatQuantity, formatSize, type LineMark, type Mark, type PointsMark, type Role } from '@nightcone/drawing';
 import { type BuiltPlot, domainOf, rangeOf } from './built-plot.ts';
 import { isEmptyRibbon, landauLevel, magneticLengthNm, ribbonWidthNm, transverseWaveNumbers } from './closed-forms.ts';
 import { joinLevels, type LevelRef } from './join-levels.ts';
@@ -73,7 +73,7 @@ export function buildRibbonBands(data: ResultData): BuiltPlot {
             ...(near
               ? [{ label: `above Landau n = ${near.text}`, value: formatQuantity(energy - near.at, 'eV') }]
               : []),
-            ...(estimate === undefined ? [] : [{ label: 'error estimate', value: formatQuantity(estimate, 'eV') }]),
+            ...(estimate === undefined ? [] : [{ label: 'error estimate', value: formatSize(estimate, 'eV') }]),
           ],
         };
       },

@@ -37,7 +37,10 @@ export function Formula({ tex, display = false }: { tex: string; display?: boole
     };
   }, [tex, display]);
   return (
-    <span ref={ref} className={display ? 'my-3 block overflow-x-auto overflow-y-hidden py-1' : ''}>
+    <span
+      ref={ref}
+      className={`[&_.katex]:text-[1.04em] ${display ? 'my-2 block overflow-x-auto overflow-y-hidden py-1' : ''}`}
+    >
       {tex}
     </span>
   );
