@@ -196,6 +196,7 @@ function iterate(chain: Chain, first: i32, members: i32, values: usize, vectors:
   for (let k = 0; k < members; k++) {
     const z = vectors + <usize>(first + k) * size;
     const x = at(values, first + k);
+    const inner = mark(); // the matrix of a ring
     if (chain.closed) factorRing(chain, x, workspace);
     else factorTridiagonal(chain, x, workspace);
     if (!improve) fillFixed(length, <u64>(k + 1), z);
@@ -212,6 +213,7 @@ function iterate(chain: Chain, first: i32, members: i32, values: usize, vectors:
         normalise(length, z);
       }
     }
+    release(inner);
   }
   release(room);
 }

@@ -16,15 +16,17 @@ export function expectedLevels(): f64 {
   return ((windowMax - windowMin) * length) / (3 * velocity) + 4;
 }
 
-/** Operations per site and level, calibrated: 1e6 are one millisecond on the machine of the calibration. */
-const OPEN_WORK: f64 = 60;
-const RING_WORK: f64 = 150;
+/** Operations per site: per level, and for counts and setting up; 1e6 are one millisecond where they were calibrated. */
+const OPEN_WORK: f64 = 18;
+const OPEN_BASE: f64 = 80;
+const RING_WORK: f64 = 40;
+const RING_BASE: f64 = 140;
 
 /** Estimated operations of one wave number. */
 export function pointWork(): f64 {
   const sites = 2 * <f64>cells * (gridCount == 3 ? 7.0 : 1.0);
   const ring = edge == ARMCHAIR || edge == PERIODIC;
-  return sites * (expectedLevels() * (ring ? RING_WORK : OPEN_WORK) + 500) + 20000;
+  return sites * (expectedLevels() * (ring ? RING_WORK : OPEN_WORK) + (ring ? RING_BASE : OPEN_BASE)) + 20000;
 }
 
 export function blockCount(): i32 {
