@@ -14,10 +14,18 @@ import { useUrlState } from '../../lib/url-state.ts';
 
 /** Admit, deactivate, change roles. Every change is in the audit log. */
 export function Component() {
+  return (
+    <AdminPage title="People" lead="Every change here is written to the audit log.">
+      <People />
+    </AdminPage>
+  );
+}
+
+function People() {
   const [url, change] = useUrlState<'state' | 'cursor'>();
   const query = useApi('listAccounts', { query: url } as InputOf<'listAccounts'>);
   return (
-    <AdminPage title="People" lead="Every change here is written to the audit log.">
+    <>
       <div className="mt-4 mb-3 w-48">
         <SelectField label="State" value={url.state ?? ''} onChange={(event) => change({ state: event.target.value })}>
           <option value="">all states</option>
@@ -52,7 +60,7 @@ export function Component() {
           )
         }
       </QueryView>
-    </AdminPage>
+    </>
   );
 }
 
