@@ -1,6 +1,6 @@
 import { describe, expect, test } from 'vitest';
 import type { ValidityNote } from './definition.ts';
-import { continuumRibbon } from './definitions/continuum-ribbon.ts';
+import { continuumRibbon } from './definitions/continuum-ribbon/definition.ts';
 import { landauLevels } from './definitions/landau-levels/definition.ts';
 import { formatQuantity } from './format-quantity.ts';
 import { manifestOf } from './manifest.ts';

@@ -1,5 +1,5 @@
 import type { ModelDefinition } from '../definition.ts';
-import { continuumRibbon } from './continuum-ribbon.ts';
+import { continuumRibbon } from './continuum-ribbon/definition.ts';
 import { landauLevels } from './landau-levels/definition.ts';
 
 /** All models, in the order of their index in the kernel: append only. */

@@ -13,7 +13,7 @@ const BLOCK_WORK: f64 = 1e9;
 export function expectedLevels(): f64 {
   if (!isWindow) return <f64>nearestCount + 4;
   const length = edge == ARMCHAIR ? 2 * widthNm : widthNm;
-  return ((windowMax - windowMin) * length) / (3 * velocity) + 4;
+  return Math.min(((windowMax - windowMin) * length) / (3 * velocity), 2 * <f64>cells) + 4;
 }
 
 /** Operations per site: per level, and for counts and setting up; 1e6 are one millisecond where they were calibrated. */
