@@ -1,11 +1,12 @@
 import type { NoteSummary } from '@nightcone/contracts';
-import { listHeldTables, type PlannedJob } from '@nightcone/db';
+import { listHeldTables, type NewPoint, type PlannedJob } from '@nightcone/db';
 import { findModel, noteText } from '@nightcone/models';
 import type { Caller } from '../context.ts';
 import { Refusal } from '../refusal.ts';
 import type { Services } from '../services.ts';
 import { findPlanningKernel } from './find-kernel.ts';
 import type { PlannedPoint, Question } from './plan-question.ts';
+import { SortedJobs } from './sorted-jobs.ts';
 
 interface Submitting {
   services: Services;
@@ -13,26 +14,36 @@ interface Submitting {
   signal: AbortSignal;
 }
 
-/** Plans a question in full and refuses what may not be submitted, before anything is stored. */
+/**
+ * Plans a question in full and refuses what may not be submitted, before anything is stored. Gathers batch by batch: of
+ * 100 000 points no single step may hold the event loop.
+ */
 export async function planToSubmit({ services, caller, signal }: Submitting, question: Question) {
   const kernel = await findPlanningKernel(services.db, question.specification.kernel);
-  const points: PlannedPoint[] = [];
+  const { model } = question.specification;
+  const jobs = new SortedJobs();
+  const points: NewPoint[] = [];
+  const tables = new Set<string>();
   const summary = await services.planner.plan({
     kernel,
     question,
     full: true,
     signal,
     onBatch: (batch) => {
-      points.push(...batch);
+      for (const point of batch) {
+        jobs.add(plannedJob(point, model, kernel.digest));
+        points.push({ jobHash: point.hash, place: point.index, values: point.values });
+        for (const digest of point.tables) tables.add(digest);
+      }
     },
   });
   // What today's definitions say of an older kernel's model is shown, not enforced.
-  if (kernel.current) refuseInvalid(summary.base.model, summary.notes);
-  await requireTables(services, caller, points);
-  return { points, summary, kernel };
+  if (kernel.current) refuseInvalid(model, summary.notes);
+  await requireTables(services, caller, [...tables]);
+  return { jobs: await jobs.inOrder(), points, summary };
 }
 
-export const plannedJob = (point: PlannedPoint, model: string, kernelDigest: string): PlannedJob => ({
+const plannedJob = (point: PlannedPoint, model: string, kernelDigest: string): PlannedJob => ({
   hash: point.hash,
   canonicalText: point.canonicalText ?? '',
   model,
@@ -62,8 +73,7 @@ function refuseInvalid(model: string, notes: readonly NoteSummary[]): void {
 }
 
 /** A table that one does not hold is as unknown as none. */
-async function requireTables({ db }: Services, { account }: Caller, points: readonly PlannedPoint[]): Promise<void> {
-  const wanted = [...new Set(points.flatMap(({ tables }) => tables))];
+async function requireTables({ db }: Services, { account }: Caller, wanted: readonly string[]): Promise<void> {
   const held = new Set(await listHeldTables(db, account.id, wanted));
   const missing = wanted.filter((digest) => !held.has(digest));
   if (missing.length === 0) return;

@@ -1,12 +1,11 @@
 import { createHash } from 'node:crypto';
 import { IdempotencyMismatch, QuotaExceeded } from '@nightcone/db';
-import { canonicalJson } from '@nightcone/provenance';
 import { Refusal } from '../refusal.ts';
 
-/** What a key stands for: the endpoint and the body, whatever the order of its members. */
+/** What a key stands for: the endpoint and the body as it was read. */
 export function idempotency(key: string | undefined, endpoint: string, body: unknown) {
   if (key === undefined) return null;
-  return { key, requestHash: createHash('sha256').update(canonicalJson({ endpoint, body })).digest('hex') };
+  return { key, requestHash: createHash('sha256').update(JSON.stringify({ endpoint, body })).digest('hex') };
 }
 
 const cpuMinutes = (ms: number) => `${(ms / 60_000).toLocaleString('en', { maximumFractionDigits: 1 })} CPU-min`;

@@ -2,16 +2,16 @@ import type { endpoints } from '@nightcone/contracts';
 import { submitJob as submit } from '@nightcone/db';
 import type { Handler } from '../../context.ts';
 import { jobTitle } from '../../job-title.ts';
-import { plannedJob, planToSubmit } from '../../planning/plan-to-submit.ts';
+import { planToSubmit } from '../../planning/plan-to-submit.ts';
 import { idempotency, refusingQuota } from '../../planning/submitting.ts';
 
 /** Submits one job; the identical question of somebody else is the same job, and its result is shared. */
 export const submitJob: Handler<typeof endpoints.submitJob> = async ({ ctx, input }) => {
   const { db } = ctx.services;
   const { title, specification, when } = input.body;
-  const { points, summary, kernel } = await planToSubmit(ctx, { specification, axes: [] });
-  const [point] = points;
-  if (!point) throw new Error('a plan without axes has one point');
+  const { jobs, summary } = await planToSubmit(ctx, { specification, axes: [] });
+  const [job] = jobs;
+  if (!job) throw new Error('a plan without axes has one job');
   return refusingQuota(() =>
     submit(
       db,
@@ -20,7 +20,7 @@ export const submitJob: Handler<typeof endpoints.submitJob> = async ({ ctx, inpu
       {
         title: title ?? jobTitle(summary.base),
         tonight: when === 'tonight',
-        job: plannedJob(point, summary.base.model, kernel.digest),
+        job,
       },
     ),
   );

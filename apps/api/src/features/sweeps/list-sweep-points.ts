@@ -1,18 +1,20 @@
 import type { endpoints, SweepPoint } from '@nightcone/contracts';
-import { type Db, findOptionalSweep, listSweepPoints as list, type SweepPointRow } from '@nightcone/db';
+import { findOptionalSweep, listSweepPoints as list, type SweepPointRow } from '@nightcone/db';
+import { breathing } from '../../breathing.ts';
 import type { Handler } from '../../context.ts';
 import { notFound } from '../../refusal.ts';
 
-const page = 2000;
+/** Rows turned into text at once. */
+const pieceRows = 1000;
 
-/** All points in the order of the grid; a large sweep is read and written page by page. */
+/** All points in the order of the grid; of a large sweep the text is made in pieces. */
 export const listSweepPoints: Handler<typeof endpoints.listSweepPoints> = async ({ ctx, input }) => {
   const { db } = ctx.services;
   const sweep = await findOptionalSweep(db, input.params.id, ctx.caller.account.id);
   if (!sweep) throw notFound('sweep');
-  const first = await list(db, sweep.submissionId, { from: 0, limit: page });
-  if (first.length < page) return { rows: first.map(pointView) };
-  return { type: 'application/json', chunks: pointText(db, sweep.submissionId, first) };
+  const rows = await list(db, sweep.submissionId);
+  if (rows.length <= pieceRows) return { rows: rows.map(pointView) };
+  return { type: 'application/json', chunks: breathing(pointText(rows)) };
 };
 
 const pointView = (row: SweepPointRow): SweepPoint => ({
@@ -25,14 +27,10 @@ const pointView = (row: SweepPointRow): SweepPoint => ({
   cpuMs: row.cpuMs,
 });
 
-async function* pointText(db: Db, submissionId: string, first: SweepPointRow[]): AsyncGenerator<string> {
-  let rows = first;
-  let separator = '{"rows":[';
-  while (rows.length > 0) {
-    yield separator + rows.map((row) => JSON.stringify(pointView(row))).join(',');
-    separator = ',';
-    const next = (rows.at(-1)?.place ?? 0) + 1;
-    rows = rows.length < page ? [] : await list(db, submissionId, { from: next, limit: page });
+function* pointText(rows: readonly SweepPointRow[]): Generator<string> {
+  for (let at = 0; at < rows.length; at += pieceRows) {
+    const piece = rows.slice(at, at + pieceRows).map((row) => JSON.stringify(pointView(row)));
+    yield (at === 0 ? '{"rows":[' : ',') + piece.join(',');
   }
   yield ']}';
 }

@@ -8,8 +8,8 @@ export const isMine = (viewer: string): SQL<boolean> =>
 
 /** A hash is an address, not a secret; but a job that uses tables is only for who holds every one of them. */
 export const mayOpen = (viewer: string): SQL =>
-  sql`not exists (select from unnest(${jobs.tableDigests}) needed where not exists (
-    select from table_holdings h where h.table_digest = needed and h.account_id = ${viewer}))`;
+  sql`(${jobs.tableDigests} = '{}' or not exists (select from unnest(${jobs.tableDigests}) needed where not exists (
+    select from table_holdings h where h.table_digest = needed and h.account_id = ${viewer})))`;
 
 /** In lists and searches, unlisted jobs show only to those who asked for them. */
 export const isListed = (viewer: string): SQL =>

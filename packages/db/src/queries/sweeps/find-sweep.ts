@@ -61,14 +61,10 @@ export interface SweepPointRow {
 }
 
 /**
- * Points of a sweep in the order of the grid, `from` the first place on. A broken-off point tells how its last execution
- * here ended; a failed one why its job fails.
+ * Points of a sweep in the order of the grid. A broken-off point tells how its last execution here ended; a failed one
+ * why its job fails.
  */
-export async function listSweepPoints(
-  db: Queryable,
-  submissionId: string,
-  page: { from: number; limit: number } = { from: 0, limit: 2 ** 31 - 1 },
-): Promise<SweepPointRow[]> {
+export async function listSweepPoints(db: Queryable, submissionId: string): Promise<SweepPointRow[]> {
   const { rows } = await db.execute<Record<keyof SweepPointRow, unknown>>(sql`
     select p.place, p.swept_values as "values", p.job_hash as "jobHash", p.state, j.result_digest as "resultDigest",
            coalesce(e.failure_code, case when p.state = 'failed' then j.failure_code end) as "failureCode",
@@ -77,8 +73,7 @@ export async function listSweepPoints(
       left join lateral (select x.failure_code, x.failure_text from executions x
         where p.state = 'broken-off' and x.submission_id = p.submission_id and x.point = p.point and x.failure_code is not null
         order by x.finished_at desc limit 1) e on true
-     where p.submission_id = ${submissionId} and p.place >= ${page.from}
-     order by p.place limit ${page.limit}`);
+     where p.submission_id = ${submissionId} order by p.place`);
   return rows as unknown as SweepPointRow[];
 }
 
