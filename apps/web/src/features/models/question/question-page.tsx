@@ -6,6 +6,7 @@ import { Page } from '../../../components/page.tsx';
 import { Empty, Loading } from '../../../components/problem-note.tsx';
 import { PasteDialog, type PastedQuestion } from './paste-dialog.tsx';
 import { QuestionSheet } from './question-sheet.tsx';
+import { dropDraft } from './use-draft.ts';
 import { useQuestionSource } from './use-question-source.ts';
 
 /** New question for one model. */
@@ -32,13 +33,19 @@ function QuestionOf({ model }: { model: NonNullable<ReturnType<typeof findModel>
     () => (location.state as { pasted?: PastedQuestion } | null)?.pasted ?? null,
   );
   const [pasting, setPasting] = useState(false);
-  const source = useQuestionSource(model, pasted);
+  const [afresh, setAfresh] = useState(0);
+  const source = useQuestionSource(model, pasted, afresh);
+  const startAfresh = () => {
+    void dropDraft(model.id);
+    setPasted(null);
+    setAfresh(afresh + 1);
+  };
   const take = (question: PastedQuestion) => {
     if (question.model === model.id) setPasted(question);
     else void navigate(`/question/${question.model}`, { state: { pasted: question } });
   };
   // another source is another form; the same source keeps what was typed
-  const formKey = `${location.search} ${pasted ? JSON.stringify(pasted) : ''}`;
+  const formKey = `${afresh} ${location.search} ${pasted ? JSON.stringify(pasted) : ''}`;
   return (
     <Page
       title={`New question: ${model.title}`}
@@ -49,6 +56,7 @@ function QuestionOf({ model }: { model: NonNullable<ReturnType<typeof findModel>
             {model.summary} <code>{model.id}</code>
           </span>
           {source.said ? <span>{source.said}</span> : null}
+          {source.kept || pasted ? <TextButton onClick={startAfresh}>Start afresh</TextButton> : null}
           <TextButton onClick={() => setPasting(true)}>Paste a specification</TextButton>
         </>
       }

@@ -63,7 +63,7 @@ function show(id: string) {
 
 test('a wrong entry is refused beside its field, with the allowed range, and nothing can be submitted', async () => {
   const user = show('continuum-ribbon');
-  const field = screen.getByLabelText('magnetic field');
+  const field = screen.getByRole('textbox', { name: 'magnetic field' });
   await user.clear(field);
   await user.type(field, '5000');
   expect(field).toHaveAttribute('aria-invalid', 'true');
@@ -74,7 +74,7 @@ test('a wrong entry is refused beside its field, with the allowed range, and not
 test('the sweep control makes a range, a ruler and a sweep for the server; again it makes one value', async () => {
   const user = show('continuum-ribbon');
   await user.click(screen.getByRole('button', { name: 'Sweep magnetic field' }));
-  expect(screen.getByLabelText('magnetic field')).toHaveValue('0..10 / 11');
+  expect(screen.getByRole('textbox', { name: 'magnetic field' })).toHaveValue('0..10 / 11');
   const slider = screen.getByRole('slider', { name: /magnetic field/ });
   expect(slider).toHaveAttribute('aria-valuetext', '5 T');
   await waitFor(() => {
@@ -87,7 +87,7 @@ test('the sweep control makes a range, a ruler and a sweep for the server; again
 
 test('arrow keys step, and what is typed is kept in this browser', async () => {
   const user = show('landau-levels');
-  const field = screen.getByLabelText('Dirac velocity');
+  const field = screen.getByRole('textbox', { name: 'Dirac velocity' });
   await user.click(field);
   await user.keyboard('{ArrowUp}');
   expect(field).toHaveValue('0.5752');
@@ -98,8 +98,8 @@ test('choosing another kind shows its members', async () => {
   const user = show('landau-levels');
   const system = within(screen.getByRole('group', { name: 'system' }));
   await user.click(system.getByRole('radio', { name: 'two layers' }));
-  expect(screen.getByLabelText('interlayer hopping')).toHaveValue('0.39');
-  expect(screen.queryByLabelText('crossed field')).toBeNull();
+  expect(screen.getByRole('textbox', { name: 'interlayer hopping' })).toHaveValue('0.39');
+  expect(screen.queryByRole('textbox', { name: 'crossed field' })).toBeNull();
 });
 
 test('cost and what is known already are said, and one job is submitted as one job', async () => {

@@ -2,6 +2,7 @@ import type { SweepInput } from '@nightcone/contracts';
 import { formatQuantity, type ModelDefinition, type Specification, titleOf } from '@nightcone/models';
 import { type ClipboardEvent, useDeferredValue, useMemo, useState } from 'react';
 import { useForm, useWatch } from 'react-hook-form';
+import { useSearchParams } from 'react-router-dom';
 import { TextField } from '../../../components/field.tsx';
 import { SheetRow } from '../../../components/sheet.tsx';
 import { formatClock } from '../../../lib/format-time.ts';
@@ -51,7 +52,7 @@ export function QuestionSheet({
     () => questionNotes(model, texts, previewed, estimate.current ? (estimate.estimate?.notes ?? null) : null, jobs),
     [model, texts, previewed, estimate.current, estimate.estimate, jobs],
   );
-  const draft = useDraft(model.id, title, texts, untouched && !formState.isDirty);
+  const draft = useDraft(model.id, title, texts, untouched && !formState.isDirty, useSource());
   const [help, setHelp] = useState<{ title: string; help: string } | null>(null);
   const form: QuestionForm = {
     model,
@@ -145,6 +146,9 @@ export function QuestionSheet({
     </QuestionProvider>
   );
 }
+
+/** What the address says beside the model: a draft belongs to it. */
+const useSource = () => useSearchParams()[0].toString();
 
 /** The last value that was there: a form with an error keeps its drawing. */
 function useLast<T>(value: T | null): T | null {

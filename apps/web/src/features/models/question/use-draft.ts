@@ -14,6 +14,8 @@ const key = (model: string) => `nightcone.question.${model}`;
 
 interface KeptDraft {
   texts: FormTexts;
+  /** What stood behind the question mark of the address where it was typed. */
+  source: string;
   /** Id of the draft on the server. */
   id?: string;
 }
@@ -50,28 +52,35 @@ const serverAfterMs = 4000;
  * Keeps what is typed: in this browser at once, on the server a few seconds after the last keystroke. `untouched`
  * texts (the defaults, an example as it came) are not worth a draft.
  */
-export function useDraft(model: string, title: string, texts: FormTexts, untouched: boolean): DraftState {
+export function useDraft(
+  model: string,
+  title: string,
+  texts: FormTexts,
+  untouched: boolean,
+  source: string,
+): DraftState {
   const [state, setState] = useState<DraftState>({ hereAt: null, serverAt: null, refused: false });
   const sent = useRef('');
   useEffect(() => {
     if (untouched) return;
     const id = readDraft(model)?.id;
-    if (writeDraft(model, { texts, ...(id ? { id } : {}) })) setState((last) => ({ ...last, hereAt: Date.now() }));
+    if (writeDraft(model, { texts, source, ...(id ? { id } : {}) }))
+      setState((last) => ({ ...last, hereAt: Date.now() }));
     const body = JSON.stringify(texts);
     if (body === sent.current) return;
     const timer = setTimeout(() => {
       sent.current = body;
-      keepOnServer(model, title, texts).then(
+      keepOnServer(model, title, texts, source).then(
         () => setState((last) => ({ ...last, serverAt: Date.now(), refused: false })),
         () => setState((last) => ({ ...last, refused: true })),
       );
     }, serverAfterMs);
     return () => clearTimeout(timer);
-  }, [model, title, texts, untouched]);
+  }, [model, title, texts, untouched, source]);
   return state;
 }
 
-async function keepOnServer(model: string, title: string, texts: FormTexts): Promise<void> {
+async function keepOnServer(model: string, title: string, texts: FormTexts, source: string): Promise<void> {
   const body = { title: title.slice(0, 200) || model, model, body: { texts } };
   const known = readDraft(model)?.id;
   if (known) {
@@ -83,5 +92,5 @@ async function keepOnServer(model: string, title: string, texts: FormTexts): Pro
     }
   }
   const draft = await api.call('createDraft', { body });
-  writeDraft(model, { texts, id: draft.id });
+  writeDraft(model, { texts, source, id: draft.id });
 }

@@ -17,11 +17,17 @@ export interface QuestionSource {
   said: string;
   /** Came as it is and was not typed here: not worth a draft yet. */
   untouched: boolean;
+  /** The texts are a draft of this browser: one may start afresh. */
+  kept?: boolean;
   problem: string | null;
 }
 
 /** Where a form's first texts come from: an example, another job or sweep, a server's draft, this browser's draft, the defaults. */
-export function useQuestionSource(model: ModelDefinition, pasted: PastedQuestion | null): QuestionSource {
+export function useQuestionSource(
+  model: ModelDefinition,
+  pasted: PastedQuestion | null,
+  afresh: number,
+): QuestionSource {
   const [search] = useSearchParams();
   const exampleId = search.get('example');
   const from = search.get('from');
@@ -30,7 +36,19 @@ export function useQuestionSource(model: ModelDefinition, pasted: PastedQuestion
   const job = useApi('getJob', { params: { hash: from ?? '' } }, { enabled: from !== null });
   const sweep = useApi('getSweep', { params: { id: sweepId ?? '' } }, { enabled: sweepId !== null });
   const draft = useApi('getDraft', { params: { id: draftId ?? '' } }, { enabled: draftId !== null });
+  const place = search.toString();
+  // biome-ignore lint/correctness/useExhaustiveDependencies: `afresh` counts how often the draft was dropped
   return useMemo(() => {
+    // what was typed on this very address comes back before what the address stands for
+    const kept = readDraft(model.id);
+    if (kept && !pasted && kept.source === place)
+      return {
+        texts: { ...fillForm(model, {}), ...kept.texts },
+        said: 'Your draft, as you left it.',
+        untouched: false,
+        kept: true,
+        problem: null,
+      };
     if (pasted?.model === model.id)
       return { texts: fillForm(model, pasted), said: 'Filled from pasted JSON.', untouched: false, problem: null };
     if (from) return fromJob(model, from, job.data, job.isError ? job.error.message : null);
@@ -44,14 +62,6 @@ export function useQuestionSource(model: ModelDefinition, pasted: PastedQuestion
         untouched: true,
         problem: null,
       };
-    const kept = readDraft(model.id);
-    if (kept)
-      return {
-        texts: { ...fillForm(model, {}), ...kept.texts },
-        said: 'Your draft, as you left it.',
-        untouched: false,
-        problem: null,
-      };
     return {
       texts: fillForm(model, {}),
       said: '',
@@ -61,6 +71,8 @@ export function useQuestionSource(model: ModelDefinition, pasted: PastedQuestion
   }, [
     model,
     pasted,
+    afresh,
+    place,
     from,
     job.data,
     job.isError,
