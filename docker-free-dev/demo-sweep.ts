@@ -10,8 +10,8 @@ const url = process.argv[2];
 if (!url) throw new Error('usage: demo-sweep.ts <address>');
 const example = models
   .flatMap((model) => model.examples.map((entry) => ({ model: model.id, ...entry })))
-  .find((entry) => entry.id === 'armchair-families');
-if (!example) throw new Error('The worked example armchair-families is missing.');
+  .find((entry) => entry.id === 'armchair-subbands-by-width');
+if (!example) throw new Error('The worked example armchair-subbands-by-width is missing.');
 
 const session = new BrowserlessSession(url);
 await session.signIn('theorist');
