@@ -4,7 +4,7 @@
  *   range value i = start + (stop − start)·i/(count − 1), the last exactly stop
  */
 import { reserve, reserveF64 } from "./arena";
-import { readBlock, readInteger, readNumber } from "./record";
+import { breakRecord, readBlock, readInteger, readNumber } from "./record";
 
 export const AXIS_NUMBER: i32 = 0;
 export const AXIS_RANGE: i32 = 1;
@@ -34,8 +34,8 @@ export function fillRange(values: usize, start: f64, stop: f64, count: i32): voi
   store<f64>(values + (<usize>last << 3), count > 1 ? stop : start);
 }
 
-/** Reads an axis of the record into the arena. */
-export function readAxis(): Axis {
+/** Reads an axis of the record into the arena. Only lattice models allow the whole zone, and fill its values themselves. */
+export function readAxis(allowsWholeZone: bool = false): Axis {
   const axis = changetype<Axis>(reserve(offsetof<Axis>()));
   axis.kind = readInteger();
   axis.count = 1;
@@ -46,14 +46,21 @@ export function readAxis(): Axis {
   } else if (axis.kind == AXIS_RANGE) {
     const start = readNumber();
     const stop = readNumber();
-    axis.count = max(1, readInteger());
+    readCount(axis);
     axis.values = reserveF64(axis.count);
     fillRange(axis.values, start, stop, axis.count);
   } else if (axis.kind == AXIS_VALUES) {
-    axis.count = max(0, readInteger());
+    readCount(axis);
     axis.values = readBlock(axis.count);
   } else {
-    axis.count = max(1, readInteger());
+    readCount(axis);
+    if (axis.kind != AXIS_WHOLE_ZONE || !allowsWholeZone) breakRecord();
   }
   return axis;
+}
+
+function readCount(axis: Axis): void {
+  const count = readInteger();
+  if (count < 1) breakRecord();
+  axis.count = max(1, count);
 }

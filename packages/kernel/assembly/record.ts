@@ -72,13 +72,18 @@ export function readBlock(count: i32): usize {
   return at;
 }
 
+/** Marks the record as broken: what was read is nothing that the host writes. */
+export function breakRecord(): void {
+  broken = true;
+}
+
 export function isBroken(): bool {
   return broken;
 }
 
 /** After everything was read: OK only when the record was whole and nothing is left over. */
 export function recordStatus(): i32 {
-  if (broken) return fail(INVALID_RECORD, "The record is too short or holds a number that is not finite.");
+  if (broken) return fail(INVALID_RECORD, "The record ends too early or holds a number that its field cannot be.");
   if (cursor != end) return fail(INVALID_RECORD, "The record is longer than the model's fields.");
   return OK;
 }

@@ -67,6 +67,17 @@ describe('status codes', () => {
     expect(kernel.open(pointer, 15)).toBe(1);
   });
 
+  it.each([
+    { kind: 'range', start: 0, stop: 1, count: 0 },
+    { kind: 'values', values: [] },
+    { kind: 'whole-zone', count: 5 },
+  ])('invalid-record: an axis that no validation would pass, %j', (fieldT) => {
+    const kernel = openKernel(current.module);
+    const specification = complete(current.manifest, landau());
+    specification.parameters.fieldT = fieldT;
+    expect(statusOf(() => kernel.open(specification))).toBe('invalid-record');
+  });
+
   it('invalid-parameter: a ladder too short for its levels', () => {
     expect(
       statusOf(() => runJob(openKernel(current.module), landau({ levels: 50 }, { kind: 'ladder', size: 10 }))),
