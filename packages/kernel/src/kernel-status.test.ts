@@ -67,7 +67,7 @@ describe('status codes', () => {
     expect(kernel.open(pointer, 15)).toBe(1);
   });
 
-  it.each([
+  it.each<{ [member: string]: Json }>([
     { kind: 'range', start: 0, stop: 1, count: 0 },
     { kind: 'values', values: [] },
     { kind: 'whole-zone', count: 5 },
