@@ -1,4 +1,5 @@
 import type { ChangeEvent } from '@nightcone/contracts';
+import { sql } from 'drizzle-orm';
 import { afterAll, beforeAll, expect, test } from 'vitest';
 import { releaseKernel } from '../../../testing/compute-all.ts';
 import {
@@ -96,4 +97,15 @@ test('ends at sign-out, and only for who signed out', async () => {
   await submit(second.agent).expect(201);
   expect(await staying.until('quota')).toMatchObject({ kind: 'quota' });
   staying.leave();
+});
+
+test('ends when messages may have been missed, so that the browser asks again', async () => {
+  const { cookie } = await signedIn('theorist');
+  const stream = await listen(cookie);
+  await api.db.execute(sql`select pg_terminate_backend(pid) from pg_stat_activity
+    where datname = current_database() and query = 'listen nightcone'`);
+  for (let event = await stream.next(); event; event = await stream.next()) expect(event.kind).not.toBe('session');
+  const again = await listen(cookie);
+  expect(again.answer.status).toBe(200);
+  again.leave();
 });

@@ -23,7 +23,8 @@ async function* events({ services, caller, signal }: Context<typeof endpoints.st
   let wake = () => {};
   const stopListening = changes.onChange((message) => {
     const own = message.topic !== 'session' || message.id === caller.account.id;
-    if (own && message.topic in kinds) waiting.set(`${message.topic} ${message.id}`, message);
+    if (own && (message.topic in kinds || message.topic === 'connected'))
+      waiting.set(`${message.topic} ${message.id}`, message);
     if (own && waiting.size > 0) wake();
   });
   try {
@@ -49,6 +50,8 @@ async function* events({ services, caller, signal }: Context<typeof endpoints.st
         yield write({ kind: 'session', id: 'ended' });
         return;
       }
+      // Messages were missed while the database was away: the browser opens a new stream and asks for everything again.
+      if (batch.some(({ topic }) => topic === 'connected')) return;
       for (const event of await tellable(services, caller, batch)) yield write(event);
     }
   } finally {
@@ -62,7 +65,6 @@ const kinds: Partial<Record<QueueMessage['topic'], ChangeEvent['kind']>> = {
   submission: 'submission',
   quota: 'quota',
   session: 'session',
-  connected: 'queue',
 };
 
 async function tellable(
@@ -73,10 +75,7 @@ async function tellable(
   const events: ChangeEvent[] = [];
   for (const { topic, id } of batch) {
     const kind = kinds[topic];
-    if (!kind || kind === 'session') continue;
-    // After a lost connection anything may have changed.
-    if (topic === 'connected') events.push({ kind: 'queue', id: 'missed' });
-    else events.push(...(await mayHear(services.db, caller, kind, id)));
+    if (kind && kind !== 'session') events.push(...(await mayHear(services.db, caller, kind, id)));
   }
   return [...new Map(events.map((event) => [`${event.kind} ${event.id}`, event])).values()];
 }
