@@ -17,7 +17,7 @@ export function RouteError({ bare = false }: { bare?: boolean }) {
       <>
         <p className="my-4 max-w-[60ch] text-ink2">
           {outdated
-            ? 'This page could not be fetched: the connection is down, or a newer Nightcone was installed. Load it again.'
+            ? 'The connection is down, or a newer Nightcone was installed meanwhile. Nothing was lost; load it again.'
             : 'The page made a mistake and was stopped. Jobs on the queue go on, and drafts are kept.'}
         </p>
         {outdated ? null : (
@@ -34,7 +34,7 @@ export function RouteError({ bare = false }: { bare?: boolean }) {
       </>
     );
   const page = (
-    <Page wide title="This page stopped">
+    <Page wide title={outdated ? 'This page could not be fetched' : 'This page stopped'}>
       {body}
     </Page>
   );

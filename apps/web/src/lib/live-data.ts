@@ -105,7 +105,16 @@ export function useLiveData(client: QueryClient, signedIn: boolean): void {
       const change = changeOf(message.data);
       if (change) refresher.add(change);
     });
+    const offline = () => setConnected(false);
+    const online = () => {
+      setConnected(true);
+      refresher.all();
+    };
+    window.addEventListener('offline', offline);
+    window.addEventListener('online', online);
     return () => {
+      window.removeEventListener('offline', offline);
+      window.removeEventListener('online', online);
       stop();
       setConnected(true);
     };

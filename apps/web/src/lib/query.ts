@@ -28,7 +28,10 @@ export function createQueryClient(): QueryClient {
       },
     }),
     defaultOptions: {
+      // 'always': without a connection a request is tried and says so, it does not wait in silence.
+      mutations: { networkMode: 'always' },
       queries: {
+        networkMode: 'always',
         staleTime: 30_000,
         refetchOnWindowFocus: true,
         retry: (count, error) =>

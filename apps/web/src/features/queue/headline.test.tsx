@@ -1,6 +1,7 @@
 import type { LastNight, Night, Submission } from '@nightcone/contracts';
 import { expect, test } from 'vitest';
 import { headline } from './headline.ts';
+import { recentlyEnded } from './recent-work.tsx';
 import { workState } from './work-state.ts';
 
 const zone = 'Europe/Berlin';
@@ -60,4 +61,18 @@ test('an active submission runs, waits for its turn, or waits for the night', ()
   expect(workState(submission({}))).toBe('waiting');
   expect(workState(submission({ when: 'tonight' }))).toBe('tonight');
   expect(workState(submission({ state: 'paused', progress: running.progress }))).toBe('paused');
+});
+
+test('what ended within a day is listed once: not what last night’s report tells', () => {
+  const now = Date.parse('2026-02-13T08:00:00Z');
+  const ended = (sweepId: string, finishedAt: string) =>
+    submission({ sweepId, jobHash: null, state: 'done', finishedAt });
+  const rows = [
+    ended('a', '2026-02-13T02:00:00Z'),
+    ended('b', '2026-02-13T07:00:00Z'),
+    ended('c', '2026-02-13T07:30:00Z'),
+    ended('d', '2026-02-11T07:00:00Z'),
+  ];
+  const told = [{ sweepId: 'a', jobHash: null }];
+  expect(recentlyEnded(rows, told, now).map((row) => row.sweepId)).toEqual(['c', 'b']);
 });

@@ -8,10 +8,16 @@ import { addressOfWork } from './work-state.ts';
 const shown = 5;
 const recentMs = 24 * 3_600_000;
 
-/** One's own work that ended within a day, the newest first. */
-export function recentlyEnded(rows: readonly Submission[], now: number): Submission[] {
+/** One's own work that ended within a day, the newest first, without what last night's report tells anyway. */
+export function recentlyEnded(
+  rows: readonly Submission[],
+  told: readonly Pick<Submission, 'sweepId' | 'jobHash'>[],
+  now: number,
+): Submission[] {
+  const addresses = new Set(told.map(addressOfWork));
   return rows
     .filter((row) => row.finishedAt !== null && now - Date.parse(row.finishedAt) < recentMs)
+    .filter((row) => !addresses.has(addressOfWork(row)))
     .sort((a, b) => (b.finishedAt ?? '').localeCompare(a.finishedAt ?? ''))
     .slice(0, shown);
 }

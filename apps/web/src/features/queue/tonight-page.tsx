@@ -26,7 +26,7 @@ export function Component() {
   const lastNight = useApi('getLastNight');
   const zone = group.timeZone;
   const mayAsk = account?.role !== 'reviewer';
-  const recent = recentlyEnded(ended.data?.rows ?? [], now);
+  const recent = recentlyEnded(ended.data?.rows ?? [], lastNight.data?.rows ?? [], now);
   const newcomer =
     mayAsk &&
     work.data?.rows.every((row) => !row.mine) === true &&
