@@ -1,4 +1,5 @@
 import { Sweep, SweepEstimate, SweepPoint } from '@nightcone/contracts';
+import { anySlot, endRetryPauses, startQueue } from '@nightcone/db/testing';
 import type { LoadedKernel } from '@nightcone/kernel/node';
 import { afterAll, beforeAll, describe, expect, test } from 'vitest';
 import { computeAll, releaseKernel } from '../../../testing/compute-all.ts';
@@ -133,6 +134,25 @@ describe('a sweep', () => {
     const { body: quota } = await second.get('/api/v1/quotas/mine').expect(200);
     expect([quota.usedMs, quota.reservedMs]).toEqual([0, 0]);
   });
+});
+
+test('points that machinery broke off say why, and are put back by hand', async () => {
+  const { body } = await post(theorist, '/sweeps', question(['0.04'])).expect(201);
+  const queue = await startQueue(api.databaseUrl);
+  for (let chunk = await queue.next(anySlot); chunk; chunk = await queue.next(anySlot)) {
+    await queue.crash(chunk, 'the slice thread ended', 1000);
+    await endRetryPauses(api.db);
+  }
+  await queue.stop();
+  const points = async () => (await theorist.get(`/api/v1/sweeps/${body.sweepId}/points`).expect(200)).body.rows;
+  const [broken] = await points();
+  expect(broken.state).toBe('broken-off');
+  expect(broken.failure.text).toMatch(/slice thread/);
+  const retry = () => post(theorist, `/sweeps/${body.sweepId}/retry-failed`, {});
+  expect((await retry().expect(200)).body).toEqual({ points: 1 });
+  expect((await retry().expect(200)).body).toEqual({ points: 0 });
+  await computeAll(api.databaseUrl, kernel);
+  expect(await points()).toMatchObject([{ state: 'finished', failure: null }]);
 });
 
 test('a quota that does not suffice is told in numbers, and nothing is stored', async () => {
