@@ -195,7 +195,8 @@ function settle(chain: Chain, brackets: Brackets, values: usize, errors: usize, 
   for (let i = 0; i < brackets.count; i++) {
     if (at(errors, i) >= 0) continue;
     put(values, i, 0.5 * (at(brackets.low, i) + at(brackets.high, i)));
-    put(errors, i, at(brackets.high, i) - at(brackets.low, i));
+    // counts within a few ε‖H‖ of a level may cross: the bracket is at least that wide
+    put(errors, i, Math.max(at(brackets.high, i) - at(brackets.low, i), 2 * chain.tolerance));
     putInt(fresh, i, 0);
   }
   return true;

@@ -146,7 +146,7 @@ export function chainCounts(chain: Chain, shifts: usize, counts: usize): bool {
     sturmCounts(chain.n, chain.diagonal, chain.squares, shifts, counts);
     return true;
   }
-  ringCounts(chain.n / 2, foldOf(chain, 0), foldCorner(chain, 0), foldMiddle(chain, 0), chain.cosine, shifts, counts, growth);
+  ringCounts(chain.n / 2, foldOf(chain, 0), foldCorner(chain, 0), foldMiddle(chain, 0), chain.cosine, chain.sine, shifts, counts, growth);
   const limit = 8 * <f64>chain.n * chain.norm;
   for (let i = 0; i < 8; i++) {
     if (at(growth, i) <= limit) continue;

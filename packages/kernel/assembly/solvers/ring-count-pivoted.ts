@@ -115,6 +115,8 @@ export function ringCountPivoted(chain: Chain, x: f64, start: i32): i32 {
   }
   pivotedGrowth = growth;
   const middle = at(b, wrap(start + r, n));
-  const det = p * s - (c * c + 2 * c * middle * chain.cosine + middle * middle);
+  const re = c * chain.cosine + middle;
+  const im = c * chain.sine;
+  const det = p * s - (re * re + im * im);
   return count + negativesOf(p, det);
 }

@@ -7,13 +7,13 @@
  *   D = [ p, c·e^{iθ} ; c·e^{−iθ}, s ],  c real:   p' = a − x − e² s/det,  s' = b − x − f² p/det,  c' = e f c/det,
  *   det = p s − c²,
  *
- * and only in the last block meets the phase the middle bond g: |c e^{iθ} + g|² = c² + 2 c g cos θ + g². A block with
+ * and only in the last block meets the phase the middle bond g, |c e^{iθ} + g|² = (c cos θ + g)² + (c sin θ)². A block with
  * det > 0 counts two or none by the sign of p, one with det < 0 counts one. All arithmetic is real.
  *
  * Source    inertia from LDLᴴ: J. J. Sylvester (1852); block Sturm sequences: W. W. Barth et al. as in sturm-count.ts,
  *           B. N. Parlett, The Symmetric Eigenvalue Problem (SIAM 1998) §3.3; the folding is an own derivation (above).
  * Input     blocks = n/2 ≥ 2; folded[8·blocks]: a, b, e², f², e·f, e, f, 0 per block (e, f couple it to the block before; 0
- *           for the first); corner = real size of H[0][n−1] = corner·e^{iθ}; middle bond g; cosine = cos θ; shifts[8].
+ *           for the first); corner = real size of H[0][n−1] = corner·e^{iθ}; middle bond g; cosine, sine of θ; shifts[8].
  * Output    counts[8] i32; growth[8] f64 = the largest |c| met.
  * Accuracy  The exact count of a matrix that differs in the places (i, n−1−i) by a few ε·growth and elsewhere as in
  *           sturm-count.ts (the errors of p and s are relative errors of e², f² and of a − x, b − x): trust it while
@@ -48,7 +48,7 @@ function flush(c: v128): v128 {
 }
 
 export function ringCounts(
-  blocks: i32, folded: usize, corner: f64, middle: f64, cosine: f64, shifts: usize, counts: usize, growth: usize,
+  blocks: i32, folded: usize, corner: f64, middle: f64, cosine: f64, sine: f64, shifts: usize, counts: usize, growth: usize,
 ): void {
   const x0 = v128.load(shifts, 0);
   let p0 = f64x2.sub(f64x2.splat(load<f64>(folded)), x0);
@@ -115,12 +115,22 @@ export function ringCounts(
     c3 = flush(f64x2.mul(ef, f64x2.mul(c3, r3)));
     g3 = f64x2.pmax(g3, f64x2.abs(c3));
   }
-  const twist = f64x2.splat(2 * middle * cosine);
-  const middle2 = f64x2.splat(middle * middle);
-  n0 = addNegatives(n0, p0, f64x2.sub(f64x2.mul(p0, s0), f64x2.add(f64x2.mul(c0, f64x2.add(c0, twist)), middle2)));
-  n1 = addNegatives(n1, p1, f64x2.sub(f64x2.mul(p1, s1), f64x2.add(f64x2.mul(c1, f64x2.add(c1, twist)), middle2)));
-  n2 = addNegatives(n2, p2, f64x2.sub(f64x2.mul(p2, s2), f64x2.add(f64x2.mul(c2, f64x2.add(c2, twist)), middle2)));
-  n3 = addNegatives(n3, p3, f64x2.sub(f64x2.mul(p3, s3), f64x2.add(f64x2.mul(c3, f64x2.add(c3, twist)), middle2)));
+  // |c e^{iθ} + g|² as a sum of squares: c² + 2 c g cos θ + g² would cancel where a level is nearly double
+  const cos = f64x2.splat(cosine);
+  const sin = f64x2.splat(sine);
+  const bond = f64x2.splat(middle);
+  const u0 = f64x2.add(f64x2.mul(c0, cos), bond);
+  const w0 = f64x2.mul(c0, sin);
+  n0 = addNegatives(n0, p0, f64x2.sub(f64x2.mul(p0, s0), f64x2.add(f64x2.mul(u0, u0), f64x2.mul(w0, w0))));
+  const u1 = f64x2.add(f64x2.mul(c1, cos), bond);
+  const w1 = f64x2.mul(c1, sin);
+  n1 = addNegatives(n1, p1, f64x2.sub(f64x2.mul(p1, s1), f64x2.add(f64x2.mul(u1, u1), f64x2.mul(w1, w1))));
+  const u2 = f64x2.add(f64x2.mul(c2, cos), bond);
+  const w2 = f64x2.mul(c2, sin);
+  n2 = addNegatives(n2, p2, f64x2.sub(f64x2.mul(p2, s2), f64x2.add(f64x2.mul(u2, u2), f64x2.mul(w2, w2))));
+  const u3 = f64x2.add(f64x2.mul(c3, cos), bond);
+  const w3 = f64x2.mul(c3, sin);
+  n3 = addNegatives(n3, p3, f64x2.sub(f64x2.mul(p3, s3), f64x2.add(f64x2.mul(u3, u3), f64x2.mul(w3, w3))));
   v128.store(growth, g0, 0);
   v128.store(growth, g1, 16);
   v128.store(growth, g2, 32);
