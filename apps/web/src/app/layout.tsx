@@ -17,7 +17,7 @@ const drawsOwnStrip = (path: string) => path === '/' || /^\/sweeps\/./.test(path
 
 export function Layout() {
   const { query, account } = useSession();
-  const { pathname } = useLocation();
+  const { pathname, search } = useLocation();
   const active = account?.state === 'active';
   useLiveData(useQueryClient(), active);
   const main = useFocusOnArrival(pathname);
@@ -45,7 +45,7 @@ export function Layout() {
     if (query.isPending) return <Loading what="who is signed in" />;
     if (query.isError) return <ProblemNote error={query.error} retry={() => void query.refetch()} />;
     if (open(pathname)) return <Outlet />;
-    if (!account) return <Navigate to={`/sign-in?returnTo=${encodeURIComponent(pathname)}`} replace />;
+    if (!account) return <Navigate to={`/sign-in?returnTo=${encodeURIComponent(pathname + search)}`} replace />;
     if (!active) return <WaitingPage account={account} />;
     return <Outlet />;
   }

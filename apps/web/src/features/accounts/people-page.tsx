@@ -2,6 +2,7 @@ import { type Account, accountStates, roles } from '@nightcone/contracts';
 import { AdminPage } from '../../components/admin-page.tsx';
 import { TextButton } from '../../components/button.tsx';
 import { Clock } from '../../components/clock.tsx';
+import { ConfirmButton } from '../../components/confirm-button.tsx';
 import { SelectField } from '../../components/field.tsx';
 import { Pager } from '../../components/pager.tsx';
 import { Empty, ProblemNote } from '../../components/problem-note.tsx';
@@ -71,7 +72,7 @@ function PersonRow({ account }: { account: Account }) {
   const self = me?.id === account.id;
   return (
     <li className="border-hair border-b py-2 text-small">
-      <div className="grid items-center gap-x-6 gap-y-1 md:grid-cols-[minmax(10rem,1fr)_7rem_8rem_13rem_6rem]">
+      <div className="grid items-center gap-x-6 gap-y-1 md:grid-cols-[minmax(10rem,1fr)_7rem_8rem_12rem_11rem]">
         <span className="min-w-0">
           <span className="font-semibold">{account.name}</span> <code className="text-ink2">{account.login}</code>
           {self ? <span className="text-ink3"> you</span> : null}
@@ -94,14 +95,12 @@ function PersonRow({ account }: { account: Account }) {
         {self ? (
           <span />
         ) : account.state === 'active' ? (
-          <TextButton
-            className="justify-self-start"
-            disabled={save.isPending}
-            onClick={() => save.mutate({ params, body: { state: 'deactivated' } })}
-            aria-label={`Deactivate ${account.name}`}
-          >
-            Deactivate
-          </TextButton>
+          <ConfirmButton
+            label="Deactivate"
+            what={account.name}
+            busy={save.isPending}
+            onConfirm={() => save.mutate({ params, body: { state: 'deactivated' } })}
+          />
         ) : (
           <TextButton
             className="justify-self-start font-semibold"

@@ -1,7 +1,8 @@
 import type { Token } from '@nightcone/contracts';
 import { useState } from 'react';
-import { Button, TextButton } from '../../components/button.tsx';
+import { Button } from '../../components/button.tsx';
 import { Clock } from '../../components/clock.tsx';
+import { ConfirmButton } from '../../components/confirm-button.tsx';
 import { ProblemNote } from '../../components/problem-note.tsx';
 import { QueryView } from '../../components/query-view.tsx';
 import { useAction, useApi } from '../../lib/query.ts';
@@ -42,7 +43,6 @@ export function Tokens() {
 
 function TokenRow({ token }: { token: Token }) {
   const revoke = useAction('revokeToken', { refreshes: ['listTokens'] });
-  const [sure, setSure] = useState(false);
   const expired = token.expiresAt !== null && Date.parse(token.expiresAt) < Date.now();
   return (
     <li className="border-hair border-b py-2 text-small">
@@ -62,26 +62,12 @@ function TokenRow({ token }: { token: Token }) {
             'never used'
           )}
         </span>
-        {sure ? (
-          <span className="flex gap-4">
-            <TextButton
-              className="font-semibold"
-              disabled={revoke.isPending}
-              onClick={() => revoke.mutate({ params: { id: token.id } })}
-            >
-              Revoke {token.name}
-            </TextButton>
-            <TextButton onClick={() => setSure(false)}>Keep</TextButton>
-          </span>
-        ) : (
-          <TextButton
-            className="justify-self-start"
-            onClick={() => setSure(true)}
-            aria-label={`Revoke ${token.name} …`}
-          >
-            Revoke …
-          </TextButton>
-        )}
+        <ConfirmButton
+          label="Revoke"
+          what={token.name}
+          busy={revoke.isPending}
+          onConfirm={() => revoke.mutate({ params: { id: token.id } })}
+        />
       </div>
       {revoke.isError ? <ProblemNote error={revoke.error} /> : null}
     </li>

@@ -1,10 +1,15 @@
 import type { Account } from '@nightcone/contracts';
 import { Page } from '../../components/page.tsx';
+import { useApi } from '../../lib/query.ts';
 import { SignOutButton } from './sign-out-button.tsx';
+
+/** Accounts that are not admitted have no event stream: this page alone asks again by itself. */
+const askAgainMs = 10_000;
 
 /** The one page that an account sees until an admin admits it, or after it was deactivated. */
 export function WaitingPage({ account }: { account: Account }) {
   const waiting = account.state === 'waiting';
+  useApi('getSession', undefined, { refetchInterval: waiting ? askAgainMs : false });
   return (
     <Page wide title={waiting ? 'Waiting to be admitted' : 'This account is deactivated'}>
       <div className="my-4 flex max-w-[62ch] flex-col gap-3">
