@@ -17,4 +17,4 @@ function titleOf({ kind, name, specification }: HashHit): string {
 
 /** Page of the web application: a result is read on the page of its job. */
 const pathOf = ({ kind, hash, jobHash }: HashHit): string =>
-  ({ job: `/jobs/${hash}`, result: `/jobs/${jobHash}`, kernel: `/h/${hash}`, table: `/tables/${hash}` })[kind];
+  ({ job: `/jobs/${hash}`, result: `/jobs/${jobHash}`, kernel: '/methods', table: `/tables/${hash}` })[kind];
