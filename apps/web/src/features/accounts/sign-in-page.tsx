@@ -15,7 +15,10 @@ export function Component() {
       <div className="my-6 flex max-w-[62ch] flex-col gap-5">
         {search.has('failed') ? (
           <Note role="alert" title="The sign-in did not work">
-            <p>The provider refused it or did not answer. Nothing was changed; try again.</p>
+            <p>
+              The provider refused it or did not answer, or this account is deactivated here. Try again, or ask an
+              admin.
+            </p>
           </Note>
         ) : null}
         <p className="font-serif text-h3 text-ink2">
