@@ -14,6 +14,7 @@ import {
   memberName,
   numberText,
   otherAxesName,
+  titleName,
   togetherName,
   writeBody,
 } from './form-texts.ts';
@@ -22,10 +23,12 @@ export interface Question {
   parameters?: { [name: string]: Json };
   numerics?: { [name: string]: Json };
   axes?: readonly SweepAxisInput[];
+  title?: string;
 }
 
 export const questionOfExample = (example: WorkedExample): Question => ({
   parameters: example.parameters,
+  title: example.title,
   ...(example.numerics ? { numerics: example.numerics } : {}),
   ...(example.sweep ? { axes: example.sweep } : {}),
 });
@@ -50,6 +53,7 @@ export function fillForm(model: FormModel, question: Question): FormTexts {
       if (i > 0) texts[togetherName(name as string)] = names[0] as string;
     });
   }
+  texts[titleName] = question.title ?? '';
   if (others.length > 0) texts[otherAxesName] = JSON.stringify(others);
   return texts;
 }

@@ -19,6 +19,7 @@ import { type QuestionForm, QuestionProvider } from './question-context.ts';
 import { CostEntry, FinishEntry, HashEntry, ValidityEntry } from './question-margin.tsx';
 import { notesByControl, questionNotes } from './question-notes.ts';
 import { SubmitEntry } from './submit-entry.tsx';
+import { sweepTitle } from './sweep-title.ts';
 import { type DraftState, useDraft } from './use-draft.ts';
 import { useEstimate } from './use-estimate.ts';
 import { useJobHash } from './use-job-hash.ts';
@@ -43,7 +44,8 @@ export function QuestionSheet({
   const { previewed, place, at } = usePreviewedPoint(checked, positions);
   const drawn = useDeferredValue(useLast(previewed));
   const preview = usePreview(model, kernel?.digest ?? null, drawn);
-  const title = texts[titleName]?.trim() || titleOf(model, checked);
+  const ownTitle = checked.swept.length > 0 ? sweepTitle(model, checked.swept) : titleOf(model, checked);
+  const title = texts[titleName]?.trim() || ownTitle;
   const input = useSweepInput(checked, title);
   const estimate = useEstimate(input);
   const { hash, text } = useJobHash(kernel ? previewed : null);
@@ -118,7 +120,7 @@ export function QuestionSheet({
               </div>
             </div>
             <div className="min-w-0">
-              <p className="min-h-10 text-ink2 text-small" aria-live="off">
+              <p className="min-h-15 text-ink2 text-small" aria-live="off">
                 {help ? (
                   <>
                     <b>{help.title}.</b> {help.help}
@@ -133,7 +135,7 @@ export function QuestionSheet({
                 <TextField
                   label="title"
                   help="For lists and mails; not hashed."
-                  placeholder={titleOf(model, checked)}
+                  placeholder={ownTitle}
                   maxLength={200}
                   {...register(titleName)}
                 />

@@ -110,7 +110,7 @@ function fromJob(
 function fromSweep(model: ModelDefinition, sweep: Sweep | undefined, problem: string | null): QuestionSource {
   if (sweep)
     return {
-      texts: fillForm(model, { ...(sweep.specification as unknown as Body), axes: sweep.axes }),
+      texts: fillForm(model, { ...(sweep.specification as unknown as Body), axes: sweep.axes, title: sweep.title }),
       said: `Started from the sweep “${sweep.title}”.`,
       untouched: true,
       problem: null,
