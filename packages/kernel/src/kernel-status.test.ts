@@ -4,7 +4,7 @@ import { promisify } from 'node:util';
 import type { Json } from '@nightcone/models';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { complete, runJob } from '../testing/run-job.ts';
-import { KernelRefusal, type LoadedKernel, loadCurrentKernel, openKernel, statusNames } from './node.ts';
+import { KernelRefusal, type LoadedKernel, loadCurrentKernel, openKernel, statusNames, type Tables } from './node.ts';
 
 let current: LoadedKernel;
 beforeAll(async () => {
@@ -103,6 +103,20 @@ describe('status codes', () => {
     specification.parameters.fieldT = { kind: 'range', start: 0, stop: 1, count: 1e9 };
     expect(statusOf(() => kernel.open(specification))).toBe('memory-exceeded');
     expect(statusOf(() => runJob(kernel, landau()))).toBe('ok');
+  });
+
+  it('outside-table: a profile narrower than the ribbon', () => {
+    const digest = 'a'.repeat(64);
+    const column = (role: string, values: number[]) => ({ role, unit: '', values: new Float64Array(values) });
+    const tables: Tables = new Map([[digest, { columns: [column('x', [-2, 2]), column('value', [0, 0.1])] }]]);
+    const parameters = {
+      width: { kind: 'nm', widthNm: 10 },
+      potentialEv: { kind: 'table', table: digest },
+      kPerNm: 0,
+      energyEv: 0,
+    };
+    const question = { model: 'continuum-ribbon', parameters };
+    expect(statusOf(() => runJob(openKernel(current.module), question, { tables }))).toBe('outside-table');
   });
 
   it('not-finite: a velocity whose square overflows', () => {
