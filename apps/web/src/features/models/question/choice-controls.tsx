@@ -1,9 +1,8 @@
 import type { ChoiceType, Field, Json } from '@nightcone/models';
-import { useId } from 'react';
+import { type ReactNode, useId } from 'react';
 import { inputLook } from '../../../components/field.tsx';
 import { Segmented } from '../../../plots/segmented.tsx';
 import { ControlRow } from './control-row.tsx';
-import { FieldControl } from './field-control.tsx';
 import { kindName, memberName } from './form-texts.ts';
 import { ProfilePlot } from './profile-plot.tsx';
 import { useQuestionForm } from './question-context.ts';
@@ -14,7 +13,18 @@ const enumWords: Record<string, string> = { 'K-prime': 'K′' };
 /** A few short kinds stand side by side; many or long ones are a list. */
 const fitsSideBySide = (labels: readonly string[]) => labels.length <= 4 && labels.join('').length <= 32;
 
-export function ChoiceControl({ name, field, value }: { name: string; field: ChoiceField; value: Json | undefined }) {
+/** `renderMember` draws the members of the chosen kind, which may be choices again. */
+export function ChoiceControl({
+  name,
+  field,
+  value,
+  renderMember,
+}: {
+  name: string;
+  field: ChoiceField;
+  value: Json | undefined;
+  renderMember: (name: string, member: Field, value: Json | undefined) => ReactNode;
+}) {
   const { texts, setText, problems, showHelp } = useQuestionForm();
   const kind = texts[kindName(name)] ?? '';
   const chosen = field.kinds.find((each) => each.kind === kind);
@@ -40,14 +50,9 @@ export function ChoiceControl({ name, field, value }: { name: string; field: Cho
         }}
         {...(error ? { error } : {})}
       />
-      {chosen?.members.map((member) => (
-        <FieldControl
-          key={inner(member)}
-          name={inner(member)}
-          field={member}
-          value={(value as { [key: string]: Json } | undefined)?.[member.name]}
-        />
-      ))}
+      {chosen?.members.map((member) =>
+        renderMember(inner(member), member, (value as { [key: string]: Json } | undefined)?.[member.name]),
+      )}
       {isProfile && value ? (
         <ProfilePlot value={value} unit={profileUnit(field)} title={field.display?.title ?? name} />
       ) : null}

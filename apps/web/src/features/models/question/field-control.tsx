@@ -11,7 +11,14 @@ import { useQuestionForm } from './question-context.ts';
 export function FieldControl({ name, field, value }: { name: string; field: Field; value: Json | undefined }) {
   switch (field.type) {
     case 'choice':
-      return <ChoiceControl name={name} field={field as Field & ChoiceType} value={value} />;
+      return (
+        <ChoiceControl
+          name={name}
+          field={field as Field & ChoiceType}
+          value={value}
+          renderMember={(inner, member, its) => <FieldControl key={inner} name={inner} field={member} value={its} />}
+        />
+      );
     case 'enum':
       return <EnumControl name={name} field={field} />;
     case 'group':
