@@ -29,6 +29,16 @@ export interface ValidityNote {
   unit: string;
 }
 
+/** Collects the notes of one specification. */
+export type AddNote = (
+  code: string,
+  severity: ValidityNote['severity'],
+  field: string,
+  value: number,
+  limit: number,
+  unit: string,
+) => void;
+
 export interface Specification {
   schema: 'nightcone.job/1';
   model: string;

@@ -1,15 +1,15 @@
+import type { AddNote } from '../../definition.ts';
 import { axisCount } from '../../evaluate-expression.ts';
 import type { SpecificationBody } from '../../expression.ts';
 import { type Choice, profileIntegral, ribbonWidthNm } from './geometry.ts';
-import type { Add } from './notes.ts';
 
 /** Combinations that the kernel refuses, said before anything is submitted. */
-export function combinationNotes(body: SpecificationBody, add: Add): void {
+export function combinationNotes(body: SpecificationBody, add: AddNote): void {
   edgeNotes(body, add);
   requestNotes(body, add);
 }
 
-function edgeNotes({ parameters, numerics }: SpecificationBody, add: Add): void {
+function edgeNotes({ parameters, numerics }: SpecificationBody, add: AddNote): void {
   const edge = parameters.edge as Choice;
   const width = parameters.width as Choice;
   const cells = Number((numerics.grid as Choice).cells);
@@ -36,7 +36,7 @@ function edgeNotes({ parameters, numerics }: SpecificationBody, add: Add): void 
   }
 }
 
-function requestNotes({ parameters, numerics }: SpecificationBody, add: Add): void {
+function requestNotes({ parameters, numerics }: SpecificationBody, add: AddNote): void {
   const edge = parameters.edge as Choice;
   const spectrum = parameters.spectrum as Choice;
   const cells = Number((numerics.grid as Choice).cells);

@@ -1,5 +1,5 @@
 import { axisExtent } from '../../axis-extent.ts';
-import type { ValidityNote } from '../../definition.ts';
+import type { AddNote, ValidityNote } from '../../definition.ts';
 import type { SpecificationBody } from '../../expression.ts';
 import { combinationNotes } from './combination-notes.ts';
 import { type Choice, profileBound, ribbonWidthNm } from './geometry.ts';
@@ -14,19 +14,10 @@ const FIRST_ORDER_PER_NM = 0.356;
 const ELASTIC_PER_NM = 2.373;
 const PI = Math.PI;
 
-export type Add = (
-  code: string,
-  severity: ValidityNote['severity'],
-  field: string,
-  value: number,
-  limit: number,
-  unit: string,
-) => void;
-
 /** Validity of a complete specification; + − × ÷ √ only. */
 export function notes(body: SpecificationBody): ValidityNote[] {
   const found: ValidityNote[] = [];
-  const add: Add = (code, severity, field, value, limit, unit) =>
+  const add: AddNote = (code, severity, field, value, limit, unit) =>
     found.push({ code, severity, field, value, limit, unit });
   combinationNotes(body, add);
   energyNotes(body, add);
@@ -54,7 +45,7 @@ function energyReach({ parameters }: SpecificationBody): number {
 const chainLength = (parameters: SpecificationBody['parameters']) =>
   ((parameters.edge as Choice).kind === 'armchair' ? 2 : 1) * ribbonWidthNm(parameters);
 
-function energyNotes(body: SpecificationBody, add: Add): void {
+function energyNotes(body: SpecificationBody, add: AddNote): void {
   const { parameters, numerics } = body;
   const reach = energyReach(body);
   const place = '/parameters/spectrum';
@@ -77,7 +68,7 @@ function energyNotes(body: SpecificationBody, add: Add): void {
     add('strain-past-first-order', 'note', '/parameters/gaugePerNm', gauge, FIRST_ORDER_PER_NM, '1/nm');
 }
 
-function fieldNotes({ parameters, numerics }: SpecificationBody, add: Add): void {
+function fieldNotes({ parameters, numerics }: SpecificationBody, add: AddNote): void {
   const width = ribbonWidthNm(parameters);
   const bond = Number(parameters.bondLengthNm);
   if (width < 10 * bond) add('width-near-bonds', 'caution', '/parameters/width', width, 10 * bond, 'nm');
@@ -102,7 +93,7 @@ function fieldNotes({ parameters, numerics }: SpecificationBody, add: Add): void
     add('one-way-mode', 'note', '/parameters/edge', 1, 0, '');
 }
 
-function requestNotes({ parameters }: SpecificationBody, add: Add): void {
+function requestNotes({ parameters }: SpecificationBody, add: AddNote): void {
   const k = parameters.kPerNm as Choice | number;
   const place = '/parameters/kPerNm';
   if (typeof k === 'number') add('no-gap-from-one-k', 'note', place, 1, 3, '');
