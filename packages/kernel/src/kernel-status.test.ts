@@ -119,6 +119,18 @@ describe('status codes', () => {
     expect(statusOf(() => runJob(openKernel(current.module), question, { tables }))).toBe('outside-table');
   });
 
+  it('inertia-mismatch: a velocity so small that the squares of the bonds vanish, and all levels coincide', () => {
+    const kernel = openKernel(current.module);
+    const parameters = { edge: { kind: 'zigzag' }, kPerNm: 0, energyEv: 0, width: { kind: 'nm', widthNm: 10 } };
+    const spectrum = { kind: 'window', eMin: -0.001, eMax: 0.001 };
+    const numerics = { grid: { kind: 'single', cells: 20 } };
+    const question = { model: 'continuum-ribbon', parameters: { ...parameters, spectrum }, numerics };
+    const specification = complete(current.manifest, question);
+    specification.parameters.diracVelocityEvNm = 1e-320;
+    kernel.open(specification);
+    expect(statusOf(() => kernel.computeSlice(0))).toBe('inertia-mismatch');
+  });
+
   it('not-finite: a velocity whose square overflows', () => {
     const kernel = openKernel(current.module);
     const specification = complete(current.manifest, landau());
