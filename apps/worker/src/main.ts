@@ -22,7 +22,14 @@ process.on('unhandledRejection', (error) => {
   process.exit(70);
 });
 for (const signal of ['SIGTERM', 'SIGINT'] as const) {
-  process.once(signal, () => void worker.stop().then(() => process.exit(0)));
+  process.once(signal, () => {
+    // Without its database a worker cannot give back what it has; other workers take it when its leases end.
+    setTimeout(() => {
+      log.warn('the database did not answer in time');
+      process.exit(1);
+    }, 15_000);
+    void worker.stop().then(() => process.exit(0));
+  });
 }
 
 await worker.start();

@@ -22,6 +22,7 @@ export class ChunkRun {
   #stopped = false;
   #failure: string | undefined;
   #computing = true;
+  #ending = false;
   /** Processor time of the batches before the one in hand. */
   #earlierCpuMs = 0;
   #recordedCpuMs = 0;
@@ -60,11 +61,12 @@ export class ChunkRun {
 
   /** `yield` lets the task in hand end; `cancel` and `lost` do not. */
   obey(order: Order): void {
-    if (order === 'go' || this.#order === 'lost') return;
+    // Once the attempt is being ended its lease is gone by rights, and the thread may be at the next chunk.
+    if (order === 'go' || this.#ending || this.#order === 'lost') return;
     if (order === 'yield' && this.#order === 'cancel') return;
     this.#order = order;
-    if (order === 'yield') this.options.thread.yield();
-    else this.stop(order);
+    if (order !== 'yield') this.stop(order);
+    else if (this.#computing) this.options.thread.yield();
   }
 
   /** Drops the task in hand. What was finished is still recorded. */
@@ -105,6 +107,7 @@ export class ChunkRun {
   async settle(): Promise<string | undefined> {
     await this.#recorder.drain();
     if (this.isLost) return undefined;
+    this.#ending = true;
     if (this.#failure === undefined) {
       if (!(await this.options.queue.finish(this.chunk))) this.#order = 'lost';
       return undefined;
@@ -137,7 +140,7 @@ export class ChunkRun {
   /** An estimate that was far too small must cost others one budget, not a whole chunk. */
   #keepBudget(): void {
     const referenceMs = this.cpuMs * this.options.queue.worker.speedFactor;
-    if (referenceMs > this.chunk.budgetMs) this.options.thread.yield();
+    if (referenceMs > this.chunk.budgetMs) this.obey('yield');
   }
 
   #note(end: BatchEnd): void {

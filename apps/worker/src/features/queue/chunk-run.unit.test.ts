@@ -113,6 +113,19 @@ describe('one attempt at a chunk', { timeout: 20_000 }, () => {
     expect(queue.calls).toEqual([]);
   });
 
+  it('leaves the thread alone once its own tasks are computed', async () => {
+    const queue = fakeQueue();
+    const earlier = start(queue, [wholeTask(0, { slices: 1 })]);
+    await earlier.compute();
+    const later = start(queue, [wholeTask(1, busy(4)), wholeTask(2, { slices: 1 })]);
+    const computed = later.compute();
+    earlier.obey('yield');
+    earlier.obey('cancel');
+    await computed;
+    await later.settle();
+    expect(queue.records.map(({ index }) => index)).toEqual([1, 2]);
+  });
+
   it('keeps what was finished before a crash', async () => {
     const queue = fakeQueue();
     const run = start(queue, [wholeTask(0, busy(3)), wholeTask(1, { slices: 1, acts: ['trap'] })]);
