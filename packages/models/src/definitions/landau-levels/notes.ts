@@ -1,5 +1,5 @@
 import { axisExtent } from '../../axis-extent.ts';
-import type { ValidityNote } from '../../definition.ts';
+import type { AddNote, ValidityNote } from '../../definition.ts';
 import type { SpecificationBody } from '../../expression.ts';
 import type { Json } from '../../fields.ts';
 
@@ -84,17 +84,9 @@ export function notes(body: SpecificationBody): ValidityNote[] {
 }
 
 type Quantities = ReturnType<typeof quantities>;
-type Add = (
-  code: string,
-  severity: ValidityNote['severity'],
-  field: string,
-  value: number,
-  limit: number,
-  unit: string,
-) => void;
 
 /** Collapse of the ladder at |F| = v|B|. */
-function crossedFieldNotes({ number, velocity, field }: Quantities, add: Add): void {
+function crossedFieldNotes({ number, velocity, field }: Quantities, add: AddNote): void {
   const force = number('electricFieldEvPerNm');
   if (force === 0) return;
   const needed = ((force < 0 ? -force : force) * HBAR_OVER_E) / velocity;
@@ -104,7 +96,7 @@ function crossedFieldNotes({ number, velocity, field }: Quantities, add: Add): v
 }
 
 /** Methods that do not exist for the system, and sizes that cannot hold the levels. */
-function methodNotes({ system, number, method, levels, square }: Quantities, add: Add): void {
+function methodNotes({ system, number, method, levels, square }: Quantities, add: AddNote): void {
   const place = '/numerics/method';
   const isBilayer = system.kind === 'bilayer';
   if (method.kind === 'closed-form' && number('v3Ratio') !== 0)
