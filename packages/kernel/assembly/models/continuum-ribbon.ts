@@ -4,13 +4,25 @@
  * Staggered grids (grid.ts) make chains and rings, whose levels solvers/ finds and proves; three grids are extrapolated
  * (point.ts). A slice is a block of wave numbers of one valley and spin (slice.ts); assemble.ts reduces.
  */
+import { fits } from "../arena";
+import { fail } from "../diagnostic";
+import { MEMORY_EXCEEDED, OK } from "../status";
 import { assemble as assembleRibbon } from "./continuum-ribbon/assemble";
-import { blockCount, blockEnd, blockStart, pointWork, totalSlices } from "./continuum-ribbon/blocks";
-import { energyAxis, kAxis, readParameters, spinCount, valleyCount } from "./continuum-ribbon/parameters";
+import { blockCount, blockEnd, blockStart, expectedLevels, pointWork, totalSlices } from "./continuum-ribbon/blocks";
+import { cells, energyAxis, gridCount, kAxis, readParameters, spinCount, stateCount, valleyCount } from "./continuum-ribbon/parameters";
 import { computeSlice as computeRibbonSlice } from "./continuum-ribbon/slice";
 
 export function open(): i32 {
-  return readParameters();
+  const status = readParameters();
+  if (status != OK) return status;
+  // densities are held as payload and as result
+  const positions = <f64>(2 * cells) * (gridCount == 3 ? 4.0 : 1.0) + 1;
+  const densities = 32 * positions * expectedLevels() * <f64>(stateCount * valleyCount * spinCount);
+  const levels = 128 * expectedLevels() * <f64>kAxis.count * <f64>(valleyCount * spinCount);
+  if (!fits(<u64>Math.min(densities + levels, 1e15))) {
+    return fail(MEMORY_EXCEEDED, "The result does not fit into 4 GiB: ask for fewer levels, wave numbers, states or cells.");
+  }
+  return OK;
 }
 
 export function sliceCount(): i32 {

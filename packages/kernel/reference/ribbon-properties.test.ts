@@ -1,0 +1,320 @@
+import type { Json } from '@nightcone/models';
+import fc from 'fast-check';
+import { beforeAll, describe, expect, it } from 'vitest';
+import { type KernelInstance, loadCurrentKernel, openKernel } from '../src/node.ts';
+import { valuesOf } from '../testing/run-job.ts';
+import {
+  armchair,
+  dimerLines,
+  expectCertified,
+  expectLevels,
+  extrapolated,
+  levelsOf,
+  type Members,
+  nearest,
+  nm,
+  polynomial,
+  range,
+  runRibbon,
+  single,
+  walls,
+  window,
+  zigzag,
+} from './ribbon-questions.ts';
+
+let kernel: KernelInstance;
+beforeAll(async () => {
+  kernel = openKernel((await loadCurrentKernel()).module);
+});
+
+const number = (min: number, max: number) => fc.double({ min, max, noNaN: true });
+const valleyEdges = fc.constantFrom<Json>(zigzag, walls(1), walls(-1), walls(1, -1));
+const coefficient = (size: number) => fc.tuple(number(-size, size), number(-size / 10, size / 10));
+const fixedSeed = { seed: 20260, numRuns: 25 };
+
+describe('symmetries', () => {
+  // common practice: time reversal exchanges the valleys and turns k and B round; strain keeps its K-sign gauge field
+  it('E of K′ at (k; B) is E of K at (−k; −B)', () => {
+    fc.assert(
+      fc.property(
+        valleyEdges,
+        number(-20, 20),
+        number(-0.4, 0.4),
+        coefficient(0.1),
+        coefficient(0.1),
+        coefficient(0.1),
+        (edge, fieldT, k, v, m, a) => {
+          const fields = {
+            potentialEv: polynomial(...v),
+            massEv: polynomial(...m),
+            gaugePerNm: polynomial(...a),
+            width: nm(17),
+            edge,
+            spectrum: nearest(0, 6),
+          };
+          const here = runRibbon(kernel, { ...fields, valleys: 'K', fieldT, kPerNm: k }, single(30));
+          const there = runRibbon(kernel, { ...fields, valleys: 'K-prime', fieldT: -fieldT, kPerNm: -k }, single(30));
+          // walls swap the roles of S and D only through their signs; with masses outside the valleys differ by time reversal
+          expectLevels(levelsOf(there), levelsOf(here), 1e-10, 1e-11);
+        },
+      ),
+      fixedSeed,
+    );
+  });
+
+  it('without potential and masses levels come in pairs ±E', () => {
+    fc.assert(
+      fc.property(
+        fc.constantFrom<Members>({ edge: zigzag, width: nm(15) }, { edge: armchair, width: dimerLines(57) }),
+        number(-20, 20),
+        number(-0.4, 0.4),
+        coefficient(0.2),
+        (ribbon, fieldT, kPerNm, a) => {
+          const fields = { fieldT, kPerNm, gaugePerNm: polynomial(...a), spectrum: nearest(0, 8) };
+          const levels = levelsOf(runRibbon(kernel, { ...ribbon, ...fields }, single(30)));
+          expectLevels(levels, levels.map((level) => -level).reverse(), 0, 1e-12);
+        },
+      ),
+      fixedSeed,
+    );
+  });
+
+  it('lengths times s, k over s, field over s² divides every level by s', () => {
+    fc.assert(
+      fc.property(
+        valleyEdges,
+        number(0.5, 3),
+        number(5, 40),
+        number(-10, 10),
+        number(-0.3, 0.3),
+        (edge, s, w, b, k) => {
+          const at = (scale: number) =>
+            runRibbon(
+              kernel,
+              {
+                edge,
+                valleys: 'K',
+                width: nm(w * scale),
+                fieldT: b / scale / scale,
+                kPerNm: k / scale,
+                spectrum: nearest(0, 5),
+              },
+              single(40),
+            );
+          expectLevels(
+            levelsOf(at(s)).map((level) => level * s),
+            levelsOf(at(1)),
+            1e-9,
+            1e-11,
+          );
+        },
+      ),
+      fixedSeed,
+    );
+  });
+});
+
+describe('completeness', () => {
+  it('a window cut in two holds the levels of both halves, none twice', () => {
+    fc.assert(
+      fc.property(number(-0.2, 0.2), number(0, 15), number(-0.3, 0.3), (cut, fieldT, kPerNm) => {
+        const ribbon = { width: dimerLines(90), fieldT, kPerNm, potentialEv: polynomial(0, 0.003) };
+        const levels = (from: number, to: number) => {
+          const result = runRibbon(kernel, { ...ribbon, spectrum: window(from, to) }, extrapolated(60));
+          expectCertified(result);
+          return levelsOf(result);
+        };
+        const whole = levels(-0.3, 0.3);
+        expectLevels([...levels(-0.3, cut), ...levels(cut, 0.3)], whole, 0, 1e-10);
+      }),
+      fixedSeed,
+    );
+  });
+
+  it('nearest levels are those of a window that holds them', () => {
+    const ribbon = { edge: zigzag, valleys: 'K', width: nm(40), fieldT: 8, kPerNm: range(-0.3, 0.3, 13) };
+    const near = runRibbon(kernel, { ...ribbon, spectrum: nearest(0.07, 5) });
+    const all = runRibbon(kernel, { ...ribbon, spectrum: window(-0.4, 0.5) });
+    for (let row = 0; row < 13; row++) {
+      const wanted = levelsOf(all, row)
+        .sort((a, b) => Math.abs(a - 0.07) - Math.abs(b - 0.07))
+        .slice(0, 5)
+        .sort((a, b) => a - b);
+      expectLevels(levelsOf(near, row), wanted, 0, 1e-11);
+    }
+  });
+
+  it('a cut pair of degenerate levels is marked', () => {
+    const ribbon = { width: dimerLines(41), kPerNm: 0.05 };
+    const cut = runRibbon(kernel, { ...ribbon, spectrum: nearest(0.3509840488, 1) });
+    expect(valuesOf(cut, 'cutMultiplet')).toEqual([1]);
+    const whole = runRibbon(kernel, { ...ribbon, spectrum: nearest(0.3509840488, 2) });
+    expect(valuesOf(whole, 'cutMultiplet')).toEqual([0]);
+  });
+
+  it('levels nearly double at k → 0 of a metallic ribbon are told apart', () => {
+    for (const k of [1e-12, 1e-9, 1e-6, 1e-3]) {
+      const result = runRibbon(kernel, { width: dimerLines(41), kPerNm: k, spectrum: nearest(0, 2) });
+      expectLevels(levelsOf(result), [-0.5751 * k, 0.5751 * k], 1e-6, 2e-14);
+      expectCertified(result);
+    }
+  });
+});
+
+describe('slopes, densities, gap and channels', () => {
+  it('dE/dk is the difference quotient of neighbouring levels', () => {
+    const step = 1e-4;
+    for (const ribbon of [
+      { edge: zigzag, valleys: 'K', width: nm(25), fieldT: 9 },
+      { edge: armchair, width: dimerLines(70), fieldT: 9, gaugePerNm: polynomial(0, 0.01) },
+      { edge: walls(1), valleys: 'K-prime', width: nm(25), fieldT: 9, massEv: polynomial(0.02, 0.001) },
+    ]) {
+      const kPerNm = range(0.1 - step, 0.1 + step, 3);
+      const result = runRibbon(kernel, { ...ribbon, kPerNm, spectrum: nearest(0, 6) });
+      const [below, , above] = [0, 1, 2].map((row) => levelsOf(result, row));
+      const slopes = levelsOf(result, 1, 'velocities');
+      slopes.forEach((slope, i) => {
+        const quotient = ((above?.[i] ?? 0) - (below?.[i] ?? 0)) / (2 * step);
+        expect(Math.abs(slope - quotient)).toBeLessThan(1e-6);
+      });
+    }
+  });
+
+  it('in a cluster the slopes are those of the crossing bands', () => {
+    const result = runRibbon(kernel, { width: dimerLines(41), kPerNm: 0, spectrum: nearest(0, 2) });
+    expectLevels(levelsOf(result, 0, 'velocities'), [-0.5751, 0.5751], 1e-7, 0);
+    expect(valuesOf(result, 'cluster')).toEqual([0, 0]);
+  });
+
+  it.each([
+    ['zigzag', { edge: zigzag, valleys: 'K', width: nm(20) }],
+    ['armchair', { edge: armchair, width: dimerLines(60) }],
+    ['walls', { edge: walls(1), valleys: 'K', width: nm(20) }],
+  ])('densities of a %s ribbon integrate to 1', (_, ribbon) => {
+    const parameters = { ...ribbon, fieldT: 12, kPerNm: range(-0.2, 0.2, 3), spectrum: nearest(0, 4) };
+    const result = runRibbon(kernel, parameters, { ...extrapolated(60), states: [0, 2] });
+    const position = valuesOf(result, 'positionNm');
+    const a = valuesOf(result, 'densityA');
+    const b = valuesOf(result, 'densityB');
+    const points = position.length;
+    const step = (position[1] as number) - (position[0] as number);
+    expect(valuesOf(result, 'densityOffsets')).toEqual([0, 4, 8]);
+    for (let row = 0; row < 8; row++) {
+      let integral = 0;
+      for (let i = 0; i < points; i++) {
+        const end = ribbon.edge === armchair && (i === 0 || i === points - 1) ? 0.5 : 1;
+        integral += end * step * ((a[row * points + i] as number) + (b[row * points + i] as number));
+      }
+      expect(integral).toBeCloseTo(1, 12);
+    }
+  });
+
+  it('the lowest Landau level of K lives on B in the middle of a wide strip', () => {
+    // published source: F. D. M. Haldane, PRL 61, 2015 (1988); the basis is (A, B) in both valleys
+    const parameters = {
+      edge: walls(1),
+      valleys: 'K',
+      width: nm(100),
+      fieldT: 10,
+      kPerNm: 0,
+      massEv: polynomial(0.02),
+    };
+    const result = runRibbon(
+      kernel,
+      { ...parameters, spectrum: nearest(-0.02, 1) },
+      { ...extrapolated(100), states: [0] },
+    );
+    expectLevels(levelsOf(result), [-0.02], 0, 1e-8);
+    const sum = (name: string) => valuesOf(result, name).reduce((total, value) => total + value, 0);
+    expect(sum('densityA') / sum('densityB')).toBeLessThan(1e-5);
+  });
+
+  it.each([
+    [40, 2 * 0.5751 * (Math.PI / 3 / 5.04199990083)],
+    [41, 0],
+    [42, 2 * 0.5751 * (Math.PI / 3 / 5.28795111551)],
+  ])('the gap of %d dimer lines, though no k = 0 is on the axis', (lines, gap) => {
+    // published source: L. Brey, H. A. Fertig, PRB 73, 235411 (2006)
+    const result = runRibbon(kernel, { width: dimerLines(lines), kPerNm: range(-0.37, 0.4, 20) });
+    expect(valuesOf(result, 'gapValid')).toEqual([1]);
+    const error = valuesOf(result, 'gapErrorEv')[0] as number;
+    expect(error).toBeLessThan(1e-10);
+    expect(Math.abs((valuesOf(result, 'gapEv')[0] as number) - gap)).toBeLessThan(1e-9);
+    for (const k of valuesOf(result, 'gapKPerNm')) expect(Math.abs(k)).toBeLessThan(1e-5);
+    expect(valuesOf(result, 'gapIsDirect')).toEqual([1]);
+    expect(valuesOf(result, 'gapAtAxisEnd')).toEqual([0]);
+  });
+
+  it('a band edge at the end of the axis is a caution', () => {
+    const result = runRibbon(kernel, { width: dimerLines(40), kPerNm: range(0.1, 0.4, 7) });
+    expect(valuesOf(result, 'gapAtAxisEnd')).toEqual([1]);
+  });
+
+  it('channels of an armchair ribbon count the subbands below E, spin included', () => {
+    const energies = [-0.45, -0.2, 0, 0.05, 0.2, 0.3, 0.45];
+    const result = runRibbon(kernel, {
+      width: dimerLines(40),
+      kPerNm: range(-1, 1, 41),
+      energyEv: { kind: 'values', values: energies },
+      spectrum: window(-0.5, 0.5),
+    });
+    // subband bottoms ħv|q_n| from published source as above
+    const bottoms = [0.119445, 0.238891, 0.477781];
+    const expected = energies.map((e) => 2 * bottoms.filter((bottom) => bottom < Math.abs(e)).length);
+    expect(valuesOf(result, 'channels')).toEqual(expected);
+    expect(valuesOf(result, 'channelsValid')).toEqual(energies.map(() => 1));
+  });
+
+  it('quantum-Hall channels of a zigzag strip step 1, 3, 5 per spin', () => {
+    // published source: L. Brey, H. A. Fertig, PRB 73, 195408 (2006)
+    const energies = [0.05, 0.12, 0.16];
+    const result = runRibbon(kernel, {
+      edge: zigzag,
+      width: nm(80),
+      fieldT: 10,
+      kPerNm: range(-0.9, 0.9, 181),
+      energyEv: { kind: 'values', values: energies },
+      spin: { kind: 'degenerate', factor: 1 },
+      spectrum: window(-0.02, 0.2),
+    });
+    expect(valuesOf(result, 'channels')).toEqual([1, 3, 5]);
+    expect(valuesOf(result, 'channelsValid')).toEqual([1, 1, 1]);
+  });
+
+  it('thermal channels are the mean of the sharp ones over the window of ∂f/∂E', () => {
+    const ribbon = { width: dimerLines(40), kPerNm: range(-1.4, 1.4, 57), spectrum: window(-0.8, 0.8) };
+    const result = runRibbon(kernel, { ...ribbon, energyEv: 0.119445, temperatureK: 100 });
+    // at a band bottom half of the step is open; the other steps are 14 and more k_B T away
+    expect((valuesOf(result, 'channels')[0] as number) / 2).toBeCloseTo(0.5, 4);
+    expect(valuesOf(result, 'channelsValid')).toEqual([1]);
+  });
+
+  it('outside the proved window nothing is claimed', () => {
+    const result = runRibbon(kernel, {
+      width: dimerLines(40),
+      kPerNm: range(-1, 1, 41),
+      energyEv: { kind: 'values', values: [0.25, 0.35] },
+      spectrum: window(-0.3, 0.3),
+    });
+    expect(valuesOf(result, 'channelsValid')).toEqual([1, 0]);
+    expect(valuesOf(result, 'channels')[1]).toBe(0);
+  });
+
+  it('spin splits every level by gμ_B B / cos ϑ', () => {
+    // CODATA 2022 μ_B = 5.7883817982e-5 eV/T
+    const ribbon = { edge: zigzag, valleys: 'K', width: nm(30), fieldT: 10, kPerNm: 0.1 };
+    const plain = levelsOf(runRibbon(kernel, { ...ribbon, spectrum: window(-0.15, 0.15) }));
+    const spin = { kind: 'zeeman', gFactor: 2, tiltDeg: 60 };
+    const result = runRibbon(kernel, { ...ribbon, spin, spectrum: window(-0.16, 0.16) });
+    const shift = 2 * 5.7883817982e-4;
+    const split = levelsOf(result).filter(
+      (level) => level > Number(plain[0]) - 0.002 && level < Number(plain.at(-1)) + 0.002,
+    );
+    expectLevels(
+      split,
+      plain.flatMap((level) => [level - shift, level + shift]).sort((x, y) => x - y),
+      1e-10,
+      1e-11,
+    );
+  });
+});
