@@ -10,13 +10,18 @@ export function nearestTarget(
   reach = Number.POSITIVE_INFINITY,
 ): number | null {
   const { domains } = geometry;
+  // both scales are linear: px per unit once, instead of a call for each of up to 10⁵ places
+  const x0 = geometry.fromX(x);
+  const y0 = geometry.fromY(y);
+  const perX = geometry.toX(1) - geometry.toX(0);
+  const perY = geometry.toY(1) - geometry.toY(0);
   let best: number | null = null;
   let least = reach * reach;
   for (let i = 0; i < targets.x.length; i++) {
     const tx = targets.x[i] as number;
     const ty = targets.y[i] as number;
     if (!(tx >= domains.x[0] && tx <= domains.x[1] && ty >= domains.y[0] && ty <= domains.y[1])) continue;
-    const distance = (geometry.toX(tx) - x) ** 2 + (geometry.toY(ty) - y) ** 2;
+    const distance = ((tx - x0) * perX) ** 2 + ((ty - y0) * perY) ** 2;
     if (distance < least) {
       least = distance;
       best = i;

@@ -4,7 +4,16 @@ import { type Theme, useTheme } from '../lib/theme.ts';
 import { readColor, readGround } from './role-colors.ts';
 
 /** Heat maps always, lines and points from 5 000 marks on; device pixels, so that nothing blurs. */
-export function PlotCanvas({ geometry, marks }: { geometry: Geometry; marks: boolean }) {
+export function PlotCanvas({
+  geometry,
+  marks,
+  shift = null,
+}: {
+  geometry: Geometry;
+  marks: boolean;
+  /** The picture as it is, moved by so many px. */
+  shift?: { x: number; y: number } | null;
+}) {
   const ref = useRef<HTMLCanvasElement | null>(null);
   const theme = useTheme();
   useLayoutEffect(() => {
@@ -19,8 +28,15 @@ export function PlotCanvas({ geometry, marks }: { geometry: Geometry; marks: boo
     if (marks) drawMarks(context, geometry, canvas);
   }, [geometry, marks, theme]);
   return (
-    <div aria-hidden="true" className="pointer-events-none absolute inset-0">
-      <canvas ref={ref} style={{ width: geometry.size.width, height: geometry.size.height }} />
+    <div aria-hidden="true" className={`pointer-events-none absolute inset-0 ${shift ? 'overflow-hidden' : ''}`}>
+      <canvas
+        ref={ref}
+        style={{
+          width: geometry.size.width,
+          height: geometry.size.height,
+          ...(shift ? { transform: `translate(${shift.x}px, ${shift.y}px)` } : {}),
+        }}
+      />
     </div>
   );
 }

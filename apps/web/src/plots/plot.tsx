@@ -49,7 +49,8 @@ export function PlotView(props: PlotProps) {
   const [active, setActive] = useState<number | null>(null);
   const hover = (place: { x: number; y: number } | null) =>
     setActive(place && nearestTarget(targets, geometry, place.x, place.y, 60));
-  const { brush, handlers } = usePlotPointer(surface, geometry, view, hover);
+  const many = useMemo(() => countMarks(built) > canvasFrom, [built]);
+  const { brush, shift, handlers } = usePlotPointer(surface, geometry, view, hover, many);
   const at = active !== null && active < targets.x.length ? active : null;
   const readout = useMemo(
     () => (at === null ? null : { ...targets.describe(at), top: geometry.toY(targets.y[at] as number) }),
@@ -57,7 +58,6 @@ export function PlotView(props: PlotProps) {
   );
   useEffect(() => onReadout?.(readout), [readout, onReadout]);
   const help = useId();
-  const many = useMemo(() => countMarks(built) > canvasFrom, [built]);
 
   const onKeyDown = (event: KeyboardEvent) => {
     const { data } = geometry;
@@ -98,7 +98,7 @@ export function PlotView(props: PlotProps) {
           onClick={() => at !== null && !brush && onPick?.(at)}
           {...handlers}
         >
-          {many || geometry.cells.length > 0 ? <PlotCanvas geometry={geometry} marks={many} /> : null}
+          {many || geometry.cells.length > 0 ? <PlotCanvas geometry={geometry} marks={many} shift={shift} /> : null}
           <svg width={width} height={height} className="absolute inset-0 overflow-visible" aria-hidden="true">
             {many ? <PlotRules geometry={geometry} /> : <PlotMarks geometry={geometry} />}
             <PlotAxes geometry={geometry} />

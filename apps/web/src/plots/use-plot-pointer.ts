@@ -25,6 +25,8 @@ export function usePlotPointer(
   geometry: Geometry,
   view: PlotWindow,
   onHover: (place: { x: number; y: number } | null) => void,
+  /** Too many marks to draw again at every step: the drawing is moved as a picture and made anew at rest. */
+  atRest: boolean,
 ) {
   const [drag, setDrag] = useState<Drag | null>(null);
   useEffect(() => {
@@ -44,6 +46,7 @@ export function usePlotPointer(
   const brush = drag && !drag.pan && Math.abs(drag.x - drag.fromX) + Math.abs(drag.y - drag.fromY) > 6 ? drag : null;
   return {
     brush: brush && boxOf(brush, geometry),
+    shift: drag?.pan && atRest ? { x: drag.x - drag.fromX, y: drag.y - drag.fromY } : null,
     handlers: {
       onPointerDown(event: PointerEvent<HTMLElement>) {
         if (event.button !== 0 || event.pointerType === 'touch') return;
@@ -57,7 +60,7 @@ export function usePlotPointer(
           onHover({ x, y });
           return;
         }
-        if (drag.pan) view.panBy(geometry, drag.x - x, drag.y - y);
+        if (drag.pan && !atRest) view.panBy(geometry, drag.x - x, drag.y - y);
         setDrag({ ...drag, x, y });
       },
       onPointerUp() {
@@ -68,6 +71,7 @@ export function usePlotPointer(
             y: [geometry.fromY(box.y + box.height), geometry.fromY(box.y)],
           });
         }
+        if (drag?.pan && atRest) view.panBy(geometry, drag.fromX - drag.x, drag.fromY - drag.y);
         setDrag(null);
       },
       onPointerLeave() {
