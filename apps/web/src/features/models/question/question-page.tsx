@@ -1,5 +1,5 @@
 import { findModel } from '@nightcone/models';
-import { useState } from 'react';
+import { useEffect, useState } from 'react';
 import { useLocation, useNavigate, useParams } from 'react-router-dom';
 import { ButtonLink, TextButton } from '../../../components/button.tsx';
 import { Page } from '../../../components/page.tsx';
@@ -33,6 +33,10 @@ function QuestionOf({ model }: { model: NonNullable<ReturnType<typeof findModel>
     () => (location.state as { pasted?: PastedQuestion } | null)?.pasted ?? null,
   );
   const [pasting, setPasting] = useState(false);
+  // the way back shall lead to what was typed since, not to the pasted text again
+  useEffect(() => {
+    if (location.state) void navigate(`${location.pathname}${location.search}`, { replace: true, state: null });
+  }, [location, navigate]);
   const [afresh, setAfresh] = useState(0);
   const source = useQuestionSource(model, pasted, afresh);
   const startAfresh = () => {
