@@ -164,11 +164,12 @@ describe('completeness', () => {
 describe('slopes, densities, gap and channels', () => {
   it('dE/dk is the difference quotient of neighbouring levels', () => {
     const step = 1e-4;
-    for (const ribbon of [
+    const ribbons: Members[] = [
       { edge: zigzag, valleys: 'K', width: nm(25), fieldT: 9 },
       { edge: armchair, width: dimerLines(70), fieldT: 9, gaugePerNm: polynomial(0, 0.01) },
       { edge: walls(1), valleys: 'K-prime', width: nm(25), fieldT: 9, massEv: polynomial(0.02, 0.001) },
-    ]) {
+    ];
+    for (const ribbon of ribbons) {
       const kPerNm = range(0.1 - step, 0.1 + step, 3);
       const result = runRibbon(kernel, { ...ribbon, kPerNm, spectrum: nearest(0, 6) });
       const [below, , above] = [0, 1, 2].map((row) => levelsOf(result, row));
