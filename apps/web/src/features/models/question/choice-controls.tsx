@@ -54,7 +54,12 @@ export function ChoiceControl({
         renderMember(inner(member), member, (value as { [key: string]: Json } | undefined)?.[member.name]),
       )}
       {isProfile && value ? (
-        <ProfilePlot value={value} unit={profileUnit(field)} title={field.display?.title ?? name} />
+        <ProfilePlot
+          value={value}
+          unit={profileUnit(field)}
+          title={field.display?.title ?? name}
+          symbol={field.display?.symbol ?? ''}
+        />
       ) : null}
     </>
   );

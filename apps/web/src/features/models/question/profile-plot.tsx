@@ -30,7 +30,17 @@ export function profileAt(profile: Profile, u: number): number {
 }
 
 /** The profile across the system as it is typed. */
-export function ProfilePlot({ value, unit, title }: { value: Json; unit: string; title: string }) {
+export function ProfilePlot({
+  value,
+  unit,
+  title,
+  symbol,
+}: {
+  value: Json;
+  unit: string;
+  title: string;
+  symbol: string;
+}) {
   const { checked } = useQuestionForm();
   const [ref, width] = useWidth<HTMLDivElement>(280);
   const half = checked.parameters.width === undefined ? 10 : ribbonWidthNm(checked.parameters) / 2 || 10;
@@ -41,12 +51,12 @@ export function ProfilePlot({ value, unit, title }: { value: Json; unit: string;
       {
         caption: title,
         x: { symbol: 'u', unit: 'nm', domain: [-half, half] },
-        y: { symbol: '', unit, domain: rangeOf([y], [-1, 1], 0.1) },
+        y: { symbol, unit, domain: rangeOf([y], [-1, 1], 0.1) },
         marks: [{ kind: 'line', role: 'ink', x, y }],
       },
       { width, height: 150 },
     );
-  }, [value, unit, title, half, width]);
+  }, [value, unit, title, symbol, half, width]);
   const ends = [-half, half].map((u) => formatQuantity(profileAt(value as Profile, u), unit));
   return (
     <figure className="mb-1 sm:pl-[9.5rem]">
