@@ -120,7 +120,7 @@ test('cancel reaches a slice that never ends within two seconds, and what was fi
   await watch.until('the first result is recorded and both slots spin', async () => {
     const [row] = await rows<{ ready: boolean }>(
       `select (select count(*) from parts where submission_id = $1) = 1
-          and (select count(*) from leases where submission_id = $1) = 2 as ready`,
+          and (select count(*) from executions where submission_id = $1 and state = 'running') = 2 as ready`,
       submission,
     );
     return row?.ready ?? false;
