@@ -115,6 +115,8 @@ export function ringCountPivoted(chain: Chain, x: f64, start: i32): i32 {
   }
   pivotedGrowth = growth;
   const middle = at(b, wrap(start + r, n));
+  p = away(p, PIVOT_FLOOR);
+  s = away(s, PIVOT_FLOOR);
   const re = c * chain.cosine + middle;
   const im = c * chain.sine;
   const det = p * s - (re * re + im * im);

@@ -25,7 +25,12 @@ import { storeCounts } from "./sturm-count";
 /** Bytes of one folded block. */
 export const FOLD_BYTES: usize = 64;
 /** Floor of |det|: far below any meaningful value, and its inverse times any element stays finite when squared. */
-export const DETERMINANT_FLOOR: f64 = 1e-100;
+export const DETERMINANT_FLOOR: f64 = 1e-60;
+/**
+ * Added to p and s: an exact zero becomes a positive pivot whose elimination agrees with how it is counted (a matrix
+ * 1e-25 away), also where c = 0 leaves the block singular.
+ */
+const BIAS: f64 = 1e-25;
 /** Added and taken away again: clears |c| below 1e-146, so that a decaying c never becomes a slow subnormal number. */
 export const FLUSH: f64 = 1e-130;
 
@@ -50,27 +55,28 @@ function flush(c: v128): v128 {
 export function ringCounts(
   blocks: i32, folded: usize, corner: f64, middle: f64, cosine: f64, sine: f64, shifts: usize, counts: usize, growth: usize,
 ): void {
+  const bias = f64x2.splat(BIAS);
   const x0 = v128.load(shifts, 0);
-  let p0 = f64x2.sub(f64x2.splat(load<f64>(folded)), x0);
-  let s0 = f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x0);
+  let p0 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded)), x0), bias);
+  let s0 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x0), bias);
   let c0 = f64x2.splat(corner);
   let g0 = f64x2.splat(0);
   let n0 = i64x2.splat(0);
   const x1 = v128.load(shifts, 16);
-  let p1 = f64x2.sub(f64x2.splat(load<f64>(folded)), x1);
-  let s1 = f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x1);
+  let p1 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded)), x1), bias);
+  let s1 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x1), bias);
   let c1 = f64x2.splat(corner);
   let g1 = f64x2.splat(0);
   let n1 = i64x2.splat(0);
   const x2 = v128.load(shifts, 32);
-  let p2 = f64x2.sub(f64x2.splat(load<f64>(folded)), x2);
-  let s2 = f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x2);
+  let p2 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded)), x2), bias);
+  let s2 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x2), bias);
   let c2 = f64x2.splat(corner);
   let g2 = f64x2.splat(0);
   let n2 = i64x2.splat(0);
   const x3 = v128.load(shifts, 48);
-  let p3 = f64x2.sub(f64x2.splat(load<f64>(folded)), x3);
-  let s3 = f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x3);
+  let p3 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded)), x3), bias);
+  let s3 = f64x2.add(f64x2.sub(f64x2.splat(load<f64>(folded, 8)), x3), bias);
   let c3 = f64x2.splat(corner);
   let g3 = f64x2.splat(0);
   let n3 = i64x2.splat(0);
@@ -92,26 +98,26 @@ export function ringCounts(
     const r3 = f64x2.div(one, det3);
     n0 = addNegatives(n0, p0, det0);
     const t0 = f64x2.mul(p0, r0);
-    p0 = f64x2.sub(f64x2.sub(a, x0), f64x2.mul(e2, f64x2.mul(s0, r0)));
-    s0 = f64x2.sub(f64x2.sub(b, x0), f64x2.mul(f2, t0));
+    p0 = f64x2.add(f64x2.sub(f64x2.sub(a, x0), f64x2.mul(e2, f64x2.mul(s0, r0))), bias);
+    s0 = f64x2.add(f64x2.sub(f64x2.sub(b, x0), f64x2.mul(f2, t0)), bias);
     c0 = flush(f64x2.mul(ef, f64x2.mul(c0, r0)));
     g0 = f64x2.pmax(g0, f64x2.abs(c0));
     n1 = addNegatives(n1, p1, det1);
     const t1 = f64x2.mul(p1, r1);
-    p1 = f64x2.sub(f64x2.sub(a, x1), f64x2.mul(e2, f64x2.mul(s1, r1)));
-    s1 = f64x2.sub(f64x2.sub(b, x1), f64x2.mul(f2, t1));
+    p1 = f64x2.add(f64x2.sub(f64x2.sub(a, x1), f64x2.mul(e2, f64x2.mul(s1, r1))), bias);
+    s1 = f64x2.add(f64x2.sub(f64x2.sub(b, x1), f64x2.mul(f2, t1)), bias);
     c1 = flush(f64x2.mul(ef, f64x2.mul(c1, r1)));
     g1 = f64x2.pmax(g1, f64x2.abs(c1));
     n2 = addNegatives(n2, p2, det2);
     const t2 = f64x2.mul(p2, r2);
-    p2 = f64x2.sub(f64x2.sub(a, x2), f64x2.mul(e2, f64x2.mul(s2, r2)));
-    s2 = f64x2.sub(f64x2.sub(b, x2), f64x2.mul(f2, t2));
+    p2 = f64x2.add(f64x2.sub(f64x2.sub(a, x2), f64x2.mul(e2, f64x2.mul(s2, r2))), bias);
+    s2 = f64x2.add(f64x2.sub(f64x2.sub(b, x2), f64x2.mul(f2, t2)), bias);
     c2 = flush(f64x2.mul(ef, f64x2.mul(c2, r2)));
     g2 = f64x2.pmax(g2, f64x2.abs(c2));
     n3 = addNegatives(n3, p3, det3);
     const t3 = f64x2.mul(p3, r3);
-    p3 = f64x2.sub(f64x2.sub(a, x3), f64x2.mul(e2, f64x2.mul(s3, r3)));
-    s3 = f64x2.sub(f64x2.sub(b, x3), f64x2.mul(f2, t3));
+    p3 = f64x2.add(f64x2.sub(f64x2.sub(a, x3), f64x2.mul(e2, f64x2.mul(s3, r3))), bias);
+    s3 = f64x2.add(f64x2.sub(f64x2.sub(b, x3), f64x2.mul(f2, t3)), bias);
     c3 = flush(f64x2.mul(ef, f64x2.mul(c3, r3)));
     g3 = f64x2.pmax(g3, f64x2.abs(c3));
   }
