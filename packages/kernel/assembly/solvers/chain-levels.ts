@@ -83,7 +83,7 @@ function step(
     putInt(modes, k, LONE);
     putInt(targets, k, vectors != 0 && k < here ? <i32>(vectors + <usize>i * size) : 0);
   }
-  if (chain.closed) ringStep(chain, fold, shifts, modes, next, residual, targets, workspace);
+  if (chain.closed) ringStep(chain, fold, here, shifts, modes, next, residual, targets, workspace);
   else twistedStep(chain, shifts, next, residual, counts, targets, workspace);
 }
 
@@ -102,13 +102,14 @@ function follow(
     let left = 0;
     for (let from = 0; from < open; from += 8) {
       const here = min(8, open - from);
-      step(chain, round & 1, active, from, here, values, vectors, workspace);
+      // the first step moves to the level, and only vectors from there are any good
+      step(chain, round & 1, active, from, here, values, round == 0 ? 0 : vectors, workspace);
       for (let k = 0; k < here; k++) {
         const i = intAt(active, from + k);
         const moved = Math.abs(at(next, k) - at(values, i));
         if (!(moved < 0.1 * chain.norm)) return false; // also for NaN
         put(values, i, Math.abs(at(next, k)) < 1e-100 ? 0 : at(next, k));
-        if (moved > 8 * chain.tolerance) putInt(active, left++, i);
+        if (round == 0 || moved > 8 * chain.tolerance) putInt(active, left++, i);
       }
     }
     open = left;

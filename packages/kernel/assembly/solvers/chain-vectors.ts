@@ -103,7 +103,7 @@ function step(
     // both vectors of a pair come from one shift, or they need not be independent
     if (pair) put(shifts, lane, 0.5 * (at(values, first) + at(values, first + 1)));
   }
-  if (chain.closed) ringStep(chain, fold, shifts, modes, next, residual, targets, workspace);
+  if (chain.closed) ringStep(chain, fold, used, shifts, modes, next, residual, targets, workspace);
   else twistedStep(chain, shifts, next, residual, counts, targets, workspace);
 }
 
@@ -128,10 +128,17 @@ function refold(
     for (let i = 0; i < count; ) {
       const members = clusterSize(cluster, count, i);
       let worst: f64 = 0;
-      for (let k = i; k < i + members; k++) worst = Math.max(worst, chainResidual(chain, at(values, k), vectors + <usize>k * size));
+      for (let k = i; k < i + members; k++) {
+        // known since the last fold unless its vector was taken again
+        if (fold == 1 || at(residuals, k) < 0) put(residuals, k, chainResidual(chain, at(values, k), vectors + <usize>k * size));
+        if (!(at(residuals, k) <= worst)) worst = at(residuals, k); // keeps a NaN
+      }
       const width = at(values, i + members - 1) - at(values, i);
       if (members <= 2 && !(worst <= ACCEPTED * chain.tolerance + width) && waiting + members <= 8) {
-        for (let k = 0; k < members; k++) putInt(group, waiting++, i + k);
+        for (let k = 0; k < members; k++) {
+          put(residuals, i + k, -1);
+          putInt(group, waiting++, i + k);
+        }
       }
       i += members;
     }
@@ -156,7 +163,9 @@ function measure(
     if (attempt > 0) iterate(chain, first, members, values, vectors, attempt == 1 && worst < 1e-3 * chain.norm);
     worst = 0;
     for (let i = first; i <= last; i++) {
-      const r = chainResidual(chain, at(values, i), vectors + <usize>i * size);
+      // refold has measured a ring's vectors already, but for those of its last fold
+      const known = chain.closed && attempt == 0 && at(residuals, i) >= 0;
+      const r = known ? at(residuals, i) : chainResidual(chain, at(values, i), vectors + <usize>i * size);
       put(residuals, i, r);
       if (!(r <= worst)) worst = r; // keeps a NaN
     }

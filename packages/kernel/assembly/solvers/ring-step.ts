@@ -11,9 +11,9 @@
  * takes r where the larger of the two is smallest and follows its first / second eigenvector: two independent vectors.
  *
  * Source    block form of the method of twisted-step.ts, own derivation (above).
- * Input     a closed chain; k, the fold to use; shifts[8]; modes[8] i32; vectors: 8 addresses of 2n doubles (re, im per
+ * Input     a closed chain; k, the fold to use; used, how many of the eight are wanted; shifts[8]; modes[8] i32; vectors: 8 addresses of 2n doubles (re, im per
  *           site) in a u32 list, 0 for none; workspace of ringStepBytes(n).
- * Output    next[8], residual[8]; unit vectors where asked.
+ * Output    next[used], residual[used]; unit vectors where asked.
  * Accuracy  as twisted-step.ts while the elimination does not grow; the caller measures the true residual.
  * Cost      about 2 n divisions and 60 n multiplications per two shifts.   Fails  never.
  */
@@ -60,7 +60,7 @@ const meetIm: usize = memory.data(64, 16);
 const pairs: usize = memory.data(64, 16);
 
 export function ringStep(
-  chain: Chain, k: i32, shifts: usize, modes: usize, next: usize, residual: usize, vectors: usize, workspace: usize,
+  chain: Chain, k: i32, used: i32, shifts: usize, modes: usize, next: usize, residual: usize, vectors: usize, workspace: usize,
 ): void {
   const blocks = chain.n / 2;
   const fold = foldOf(chain, k);
@@ -69,7 +69,7 @@ export function ringStep(
   }
   forward(fold, foldCorner(chain, k), blocks, shifts, workspace);
   backward(fold, foldMiddle(chain, k), chain.cosine, chain.sine, blocks, shifts, workspace);
-  for (let lane = 0; lane < 8; lane++) {
+  for (let lane = 0; lane < used; lane++) {
     finish(chain, fold, foldStart(chain, k), blocks, lane, at(shifts, lane), load<i32>(modes + (<usize>lane << 2)), next, residual, vectors, workspace);
   }
 }
