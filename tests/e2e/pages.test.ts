@@ -32,7 +32,6 @@ async function violations(page: Page): Promise<string[]> {
 
 /** Loaded, drawn, nothing busy: the page says so by aria-busy and by its heading. */
 async function settled(page: Page) {
-  await page.waitForLoadState('networkidle').catch(() => {});
   await page.getByRole('heading', { level: 1 }).first().waitFor();
   await page.waitForFunction(() => !document.querySelector('main [aria-busy="true"]'));
 }

@@ -18,15 +18,16 @@ describe.skipIf(!chromiumPath)('one theorist’s way through Nightcone', () => {
   test('from signing in to a result that reproduces by its hash', async () => {
     const context = await browser.newContext({ viewport: { width: 1440, height: 1000 } });
     const failures: string[] = [];
+    context.setDefaultTimeout(20_000);
     context.on('weberror', (error) => failures.push(error.error().message));
     const page = await signIn(context, application.url, 'theorist');
 
     // a new question with its preview
     await page.getByRole('link', { name: 'New question' }).first().click();
-    await page.getByRole('link', { name: /continuum ribbon/i }).click();
+    await page.getByRole('link', { name: /which subbands does a strip have/i }).click();
     await page.waitForURL(/\/question\/continuum-ribbon/);
     await page
-      .getByRole('img', { name: /subbands/i })
+      .getByLabel(/^subbands of/i)
       .first()
       .waitFor();
     await page
@@ -52,7 +53,7 @@ describe.skipIf(!chromiumPath)('one theorist’s way through Nightcone', () => {
     // watched without reloading
     await page.getByText('60 of 60').first().waitFor({ timeout: 120_000 });
     await page
-      .getByRole('img', { name: /against/i })
+      .getByLabel(/gap against/i)
       .first()
       .waitFor();
 
@@ -65,7 +66,7 @@ describe.skipIf(!chromiumPath)('one theorist’s way through Nightcone', () => {
     await page.waitForURL(/\/jobs\/[0-9a-f]{64}/);
     const hash = page.url().slice(-64);
     await page
-      .getByRole('img', { name: /subbands/i })
+      .getByLabel(/^subbands of/i)
       .first()
       .waitFor();
     await page.getByRole('heading', { name: 'Certificate' }).waitFor();
