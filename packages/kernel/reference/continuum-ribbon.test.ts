@@ -127,6 +127,34 @@ describe('infinite mass', () => {
     expectLevels(levelsOf(result), expected, 1e-10, 1e-11);
   });
 
+  // published source: the same; exact matching to a finite mass outside. The steps lie between grid sites, so the levels
+  // carry the last difference of the grids as their error
+  it.each([
+    [0.5, 0.0716342333868, 0.00074643],
+    [1, 0.0723538482216, 0.00077324],
+    [2, 0.0727333649083, 0.00078744],
+    [4, 0.0729283956919, 0.00079476],
+    [8, 0.0730272764448, 0.00079848],
+  ])('[C9] a wall of %d eV approaches the infinite one as 1/mass', (wall, expected, product) => {
+    const pad = (20 * 0.5751) / wall; // the wave is e^{−20} where the outer wall stands
+    const result = runRibbon(
+      kernel,
+      {
+        edge: walls(1),
+        valleys: 'K',
+        width: nm(20 + 2 * pad),
+        kPerNm: 0.1,
+        massEv: { kind: 'steps', edges: [-10, 10], values: [wall, 0, wall] },
+        spectrum: window(0.05, 0.1),
+      },
+      extrapolated(1000),
+    );
+    const error = valuesOf(result, 'errorEstimate')[0] as number;
+    expect(error).toBeLessThan(1e-6);
+    expectLevels(levelsOf(result), [expected], 0, Math.max(2 * error, 1e-9));
+    expect((0.0731270863733 - (levelsOf(result)[0] as number)) * wall).toBeCloseTo(product, 5);
+  });
+
   it('opposite walls hold the chiral mode ±ħvk of either valley', () => {
     const result = runRibbon(kernel, {
       edge: walls(1, -1),

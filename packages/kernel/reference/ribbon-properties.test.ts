@@ -210,6 +210,17 @@ describe('slopes, densities, gap and channels', () => {
     }
   });
 
+  it('the share of valley K is 1 and 0 where the edge keeps the valleys apart, one half where it mixes them', () => {
+    const request = { kPerNm: 0.1, spectrum: nearest(0, 2) };
+    const apart = runRibbon(kernel, { edge: zigzag, width: nm(20), ...request });
+    expect(valuesOf(apart, 'valleyWeight')).toEqual([1, 1, 0, 0]);
+    const mixed = runRibbon(kernel, { width: dimerLines(40), ...request });
+    for (const share of valuesOf(mixed, 'valleyWeight')) expect(share).toBeCloseTo(0.5, 10);
+    // with a mass the n = 0 level of K lies at −m and that of K′ at +m (F. D. M. Haldane, PRL 61, 2015): each has its valley
+    const sided = runRibbon(kernel, { width: dimerLines(200), fieldT: 20, massEv: polynomial(0.05), ...request });
+    expect(valuesOf(sided, 'valleyWeight').some((share) => Math.abs(share - 0.5) > 0.4)).toBe(true);
+  });
+
   it('the lowest Landau level of K lives on B in the middle of a wide strip', () => {
     // published source: F. D. M. Haldane, PRL 61, 2015 (1988); the basis is (A, B) in both valleys
     const parameters = {

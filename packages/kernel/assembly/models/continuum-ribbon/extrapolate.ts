@@ -6,7 +6,7 @@
  * Source    L. F. Richardson, Phil. Trans. R. Soc. A 210, 307 (1911); E. H. Neville's scheme, W. H. Press et al.,
  *           Numerical Recipes §3.1 (common practice).
  * Accuracy  Where (E₁ − E₂)/(E₂ − E₃) lies outside 3 … 5 the sequence does not behave as h²: nothing is extrapolated,
- *           the value is E₃ and the error |E₃ − E₂|. Differences below `noise` are rounding: value E₃, error noise.
+ *           the value is E₃ and the error |E₃ − E₂|, or |E₂ − E₁|/4 if that is larger. Differences below `noise` are rounding: value E₃, error noise.
  */
 export let limitValue: f64 = 0;
 export let limitError: f64 = 0;
@@ -26,7 +26,8 @@ export function extrapolate(e1: f64, e2: f64, e3: f64, h1: f64, h2: f64, h3: f64
   const ratio = d12 / d23;
   if (!(ratio >= 3 && ratio <= 5)) {
     limitValue = e3;
-    limitError = Math.abs(d23) + noise;
+    // an uneven sequence may happen to stand still once
+    limitError = Math.max(Math.abs(d23), 0.25 * Math.abs(d12)) + noise;
     limitHolds = false;
     return;
   }

@@ -53,7 +53,9 @@ function energyNotes(body: SpecificationBody, add: AddNote): void {
   else if (reach > ONE_PERCENT_EV) add('cone-one-percent', 'note', place, reach, ONE_PERCENT_EV, 'eV');
   const grid = numerics.grid as Choice;
   const step = chainLength(parameters) / Number(grid.cells);
-  const wavelength = (2 * PI * Number(parameters.diracVelocityEvNm)) / Math.max(reach, 1e-9);
+  // the wave is shortest where the potential is furthest from the energy
+  const depth = reach + profileBound(parameters.potentialEv as Choice, ribbonWidthNm(parameters));
+  const wavelength = (2 * PI * Number(parameters.diracVelocityEvNm)) / Math.max(depth, 1e-9);
   if (wavelength < 20 * step) add('grid-coarse', 'caution', '/numerics/grid', wavelength / step, 20, '');
   if (grid.kind === 'single') add('no-error-estimate', 'caution', '/numerics/grid', 1, 3, '');
   for (const name of ['potentialEv', 'massEv', 'valleyMassEv', 'gaugePerNm']) {
