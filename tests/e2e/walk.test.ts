@@ -46,7 +46,7 @@ describe.skipIf(!chromiumPath)('one theorist’s way through Nightcone', () => {
 
     // sixty jobs, their estimate, and off they go
     await chains.fill('10..69 / 60');
-    await page.getByText('0 of 60').waitFor();
+    await page.getByText('0 of 60', { exact: true }).waitFor();
     await page.getByRole('button', { name: 'Submit now' }).click();
     await page.waitForURL(/\/sweeps\//);
 
