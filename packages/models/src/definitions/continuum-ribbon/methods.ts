@@ -16,7 +16,7 @@ and $m$ stands for $m + \tau m_\tau$ with the valley-odd mass $m_\tau$.
 
 **Infinite mass** outside with sign $s$: $\phi_B/\phi_A = s$ below and $-s$ above. In $S, D = \phi_A \pm \phi_B$ momentum and mass change places. Opposite signs leave one mode $E = \pm\tau\hbar v k$.
 
-**Periodic** with phase $\theta$: $E = \pm\sqrt{m^2 + (\hbar v)^2\left(k^2 + ((2\pi n+\theta)/W)^2\right)}$ without profiles.`,
+**Periodic** with phase $\theta$, without profiles: $E = \pm\sqrt{m^2 + (\hbar v)^2 (k^2 + q^2)}$, $q = (2\pi n+\theta)/W$.`,
   numerics: String.raw`
 The two components sit half a step apart, which leaves no doubled levels. Every edge gives a real tridiagonal chain, or a ring with one complex bond. Levels are counted by inertia: Sturm counts for eight energies at once on a chain; on a ring, folded to $2\times2$ blocks, the same with real arithmetic, and with chosen pivots where an elimination grows. Bisection on counts isolates the levels, twisted factorisations refine them and give their vectors, and two more counts prove every value. So the list between the proved ends is complete: no level is missed and none invented.
 
