@@ -1,7 +1,9 @@
 // What the queue costs: node --import tsx scripts/bench-queue.ts [--repeats 3]. Prints one JSON object.
-// The same jobs are computed by the same threads without a queue (pure) and through a worker process on a durable
-// database of its own (sweep); what is compared are elapsed times, medians of the repeats.
+// Two elapsed times of the same jobs: by the same threads without a queue (pure), and through a worker process on a
+// durable database of its own (sweep). Other programs on the machine add to both; they hardly change `idlePercent`, the
+// time that the worker's slots spent on other things than jobs, in percent of the time that they spent on jobs.
 import { spawn } from 'node:child_process';
+import { createInterface } from 'node:readline';
 import { parseArgs } from 'node:util';
 import { planJobs, submitPlanned } from '../apps/worker/src/testing/planned-sweep.ts';
 import { watchDatabase } from '../apps/worker/src/testing/until.ts';
@@ -13,8 +15,6 @@ import { createDatabase, dropDatabase, startPostgres, stopPostgres } from './pos
 const slots = 2;
 const { values: options } = parseArgs({ options: { repeats: { type: 'string', default: '3' } } });
 const repeats = Number(options.repeats);
-
-const median = (values: number[]) => [...values].sort((a, b) => a - b)[values.length >> 1] as number;
 
 /** Elapsed milliseconds of the jobs on two warm threads that take the next one when they are free. */
 async function pureMs(kernel: LoadedKernel, jobs: PlannedJob[]): Promise<number> {
@@ -45,8 +45,13 @@ async function pureMs(kernel: LoadedKernel, jobs: PlannedJob[]): Promise<number>
   return elapsed;
 }
 
-/** Elapsed milliseconds from the submission to its end, with a worker that has joined before. */
-async function sweepMs(server: string, kernel: LoadedKernel, jobs: PlannedJob[]): Promise<number> {
+interface SweepTimes {
+  /** From the submission to its end, with a worker that has joined before. */
+  elapsedMs: number;
+  idlePercent: number;
+}
+
+async function runSweep(server: string, kernel: LoadedKernel, jobs: PlannedJob[]): Promise<SweepTimes> {
   const name = `bench_${process.pid}_${Date.now()}`;
   const url = createDatabase(server, name);
   await migrate(url);
@@ -59,14 +64,19 @@ async function sweepMs(server: string, kernel: LoadedKernel, jobs: PlannedJob[])
   );
   const watch = watchDatabase(url);
   const worker = spawn(process.execPath, ['--import', 'tsx', 'apps/worker/src/main.ts', '--slots', String(slots)], {
-    env: { ...process.env, NIGHTCONE_DATABASE_URL: url, NIGHTCONE_LOG_LEVEL: 'warn' },
-    stdio: ['ignore', 'inherit', 'inherit'],
+    env: { ...process.env, NIGHTCONE_DATABASE_URL: url, NIGHTCONE_LOG_LEVEL: 'debug' },
+    stdio: ['ignore', 'pipe', 'inherit'],
+  });
+  let computeMs = 0;
+  createInterface({ input: worker.stdout }).on('line', (line) => {
+    const { msg, computeMs: more } = JSON.parse(line);
+    if (msg === 'chunk ended') computeMs += more;
   });
   const exited = new Promise((resolve) => worker.once('exit', resolve));
   try {
     await watch.until('the worker has joined', async () => (await pool.query('select from workers')).rowCount === 1);
     const submission = await submitPlanned(db, { accountId: rows[0]?.id as string, requestId: null }, jobs);
-    const [ms, failed] = await watch.until(
+    const [elapsedMs, failed] = await watch.until(
       'the sweep has ended',
       async () => {
         const ended = await pool.query<{ ms: number; failed: number }>(
@@ -74,12 +84,14 @@ async function sweepMs(server: string, kernel: LoadedKernel, jobs: PlannedJob[])
              from submissions where id = $1 and finished_at is not null`,
           [submission],
         );
-        return ended.rows[0] ? [ended.rows[0].ms, ended.rows[0].failed] : null;
+        return ended.rows[0] ? ([ended.rows[0].ms, ended.rows[0].failed] as const) : null;
       },
       600_000,
     );
     if (failed) throw new Error(`${failed} jobs failed`);
-    return ms as number;
+    worker.kill('SIGTERM');
+    await exited;
+    return { elapsedMs, idlePercent: 100 * ((slots * elapsedMs) / computeMs - 1) };
   } finally {
     worker.kill('SIGTERM');
     await exited;
@@ -116,25 +128,21 @@ const tiny = await planJobs(
 const server = await startPostgres('bench');
 try {
   const pure: number[] = [];
-  const sweep: number[] = [];
-  const tinySweep: number[] = [];
+  const sweeps: SweepTimes[] = [];
+  const tinySweeps: SweepTimes[] = [];
   for (let i = 0; i < repeats; i++) {
     pure.push(await pureMs(kernel, sixty));
-    sweep.push(await sweepMs(server, kernel, sixty));
-    tinySweep.push(await sweepMs(server, kernel, tiny));
+    sweeps.push(await runSweep(server, kernel, sixty));
+    tinySweeps.push(await runSweep(server, kernel, tiny));
   }
+  const elapsed = (runs: SweepTimes[]) => runs.map((run) => Math.round(run.elapsedMs));
+  const idle = (runs: SweepTimes[]) => runs.map((run) => Math.round(10 * run.idlePercent) / 10);
   const report = {
     slots,
-    repeats,
-    sixtyJobs: {
-      pureMs: Math.round(median(pure)),
-      sweepMs: Math.round(median(sweep)),
-      overheadPercent: Math.round(1000 * (median(sweep) / median(pure) - 1)) / 10,
-    },
+    sixtyJobs: { pureMs: pure.map(Math.round), sweepMs: elapsed(sweeps), idlePercent: idle(sweeps) },
     tinyJobs: {
-      count: tiny.length,
-      sweepMs: Math.round(median(tinySweep)),
-      jobsPerSecond: Math.round((1000 * tiny.length) / median(tinySweep)),
+      sweepMs: elapsed(tinySweeps),
+      jobsPerSecond: elapsed(tinySweeps).map((ms) => Math.round((1000 * tiny.length) / ms)),
     },
   };
   console.log(JSON.stringify(report, null, 2));

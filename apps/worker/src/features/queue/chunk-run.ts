@@ -26,6 +26,7 @@ export class ChunkRun {
   /** Processor time of the batches before the one in hand. */
   #earlierCpuMs = 0;
   #recordedCpuMs = 0;
+  #computeMs = 0;
   #finishedTasks = 0;
   #taskFraction = 0;
 
@@ -43,6 +44,11 @@ export class ChunkRun {
 
   get cpuMs(): number {
     return this.#earlierCpuMs + (this.#computing ? this.options.thread.cpuMs : 0);
+  }
+
+  /** Elapsed time for which the thread has worked on this chunk. */
+  get computeMs(): number {
+    return this.#computeMs;
   }
 
   get finishedTasks(): number {
@@ -89,7 +95,9 @@ export class ChunkRun {
           },
         };
         const keepsKernel = this.chunk.memoryBytes <= keptKernelBytes;
+        const startedAt = performance.now();
         const end = await this.options.thread.run(tasks, listener, { keepsKernel });
+        this.#computeMs += performance.now() - startedAt;
         this.#earlierCpuMs += this.options.thread.cpuMs;
         if (end.kind !== 'done') {
           this.#note(end);

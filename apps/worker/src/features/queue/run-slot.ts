@@ -41,7 +41,8 @@ export async function runSlot({
     const { id: chunk, attempt, submissionId: submission } = run.chunk;
     try {
       const crash = await run.settle();
-      const end = { chunk, attempt, submission, tasks: run.finishedTasks, cpuMs: Math.round(run.cpuMs) };
+      const times = { cpuMs: Math.round(run.cpuMs), computeMs: Math.round(run.computeMs) };
+      const end = { chunk, attempt, submission, tasks: run.finishedTasks, ...times };
       if (crash !== undefined) log.warn({ ...end, reason: crash }, 'chunk crashed');
       else if (run.isLost) log.warn(end, 'chunk was lost to another attempt');
       else log.debug(end, 'chunk ended');
