@@ -44,9 +44,23 @@ for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
   });
 }
 
+/** A start of this checkout that still runs; a process id alone may have been given to somebody else since. */
+function runningStart({ pid }) {
+  try {
+    return pid !== undefined && fs.readFileSync(`/proc/${pid}/cmdline`, 'utf8').includes('start.mjs');
+  } catch {
+    return false;
+  }
+}
+
 async function start() {
   requireNode();
   requireWritable();
+  const last = readState();
+  if (runningStart(last)) {
+    say(`Nightcone of this checkout runs already: http://127.0.0.1:${last.port} (process ${last.pid}).`);
+    return;
+  }
   await ensurePackages();
   const [server] = await Promise.all([startPostgres('main'), ensureKernel().then(ensureWeb)]);
   const databaseUrl = createDatabase(server, 'nightcone');
@@ -58,7 +72,7 @@ async function start() {
   });
   const state = readState();
   state.port = await pickPort(state.port);
-  fs.writeFileSync(stateFile, JSON.stringify(state), { mode: 0o600 });
+  fs.writeFileSync(stateFile, JSON.stringify({ ...state, pid: process.pid }), { mode: 0o600 });
   const { url } = await startApplication({
     processes,
     databaseUrl,
