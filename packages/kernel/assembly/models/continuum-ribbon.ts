@@ -2,7 +2,7 @@
  * Model `continuum-ribbon`: subbands of a Dirac ribbon with edges, field, potential, mass and strain.
  *
  * Staggered grids (grid.ts) make chains and rings, whose levels solvers/ finds and proves; three grids are extrapolated
- * (point.ts). A slice is a block of wave numbers of one valley and spin (slice.ts); assemble.ts reduces.
+ * (point.ts, request.ts). A slice is a block of wave numbers of one valley and spin (slice.ts); assemble.ts reduces.
  */
 import { fits } from "../arena";
 import { fail } from "../diagnostic";

@@ -1,8 +1,12 @@
 /** Exports for the solver tests only: chains from plain arrays. Never part of a released kernel. */
-import { Chain, chainCounts, newChain, sealChain } from "../solvers/chain";
-import { put } from "../doubles";
-import { levelsByIndex } from "../solvers/chain-levels";
 import { releaseAll, reserve } from "../arena";
+import { put } from "../doubles";
+import { countBelow } from "../solvers/band-inertia";
+import { bandRadius, bandWindow } from "../solvers/band-levels";
+import { BandMatrix, newBand, sealBand, setEntry } from "../solvers/band-matrix";
+import { Chain, chainCounts, newChain, sealChain } from "../solvers/chain";
+import { levelsByIndex } from "../solvers/chain-levels";
+import { levelVectors } from "../solvers/chain-vectors";
 
 export function testRelease(): void {
   releaseAll();
@@ -25,10 +29,6 @@ export function testCounts(chain: usize, shifts: usize, counts: usize): bool {
 export function testLevels(chain: usize, first: i32, count: i32, guesses: usize, values: usize, errors: usize, vectors: usize, fresh: usize): bool {
   return levelsByIndex(changetype<Chain>(chain), first, count, guesses, values, errors, vectors, fresh);
 }
-import { BandMatrix, newBand, sealBand, setEntry } from "../solvers/band-matrix";
-import { countBelow } from "../solvers/band-inertia";
-import { bandRadius, bandWindow } from "../solvers/band-levels";
-import { levelVectors } from "../solvers/chain-vectors";
 
 export function testVectors(chain: usize, count: i32, values: usize, errors: usize, vectors: usize, fresh: usize, residuals: usize, cluster: usize): bool {
   return levelVectors(changetype<Chain>(chain), count, values, errors, vectors, fresh, residuals, cluster);

@@ -11,7 +11,8 @@ import {
   ARMCHAIR, edge, fieldT, gridCount, hasNoProfiles, hasSteps, INFINITE_MASS, inverseArea, isMassDomain, mass, PERIODIC,
   potential, ringCosine, spinCount, valleyMass, velocity, widthNm,
 } from "./parameters";
-import { finest, finestChain, Point, Setting } from "./point";
+import { Point } from "./point";
+import { finest, finestChain, Setting } from "./setting";
 import { traceExponent, traceMantissa, transferTrace } from "./transfer-trace";
 
 export const QUANTISATION: i32 = 0;

@@ -15,7 +15,8 @@ import { at, put } from "../../doubles";
 import { OK } from "../../status";
 import { intAt } from "../../solvers/chain-brackets";
 import { velocity } from "./parameters";
-import { finestChain, gridAt, Point, Setting, solveRange } from "./point";
+import { Point, solveRange } from "./point";
+import { finestChain, gridAt, Setting } from "./setting";
 import { leftVelocity, levelAt, LEVEL_ENERGY, LEVEL_ERROR, LEVEL_INDEX, positionOf, rightVelocity, ROW_K, rowLevels } from "./row";
 
 export const EXTREMUM_DOUBLES: i32 = 5;

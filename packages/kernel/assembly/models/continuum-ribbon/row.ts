@@ -11,7 +11,8 @@ import { at, put } from "../../doubles";
 import { intAt } from "../../solvers/chain-brackets";
 import { vectorLength } from "../../solvers/chain-levels";
 import { addDensities, positionCount } from "./expectation";
-import { finest, finestChain, Point, Setting } from "./point";
+import { Point } from "./point";
+import { finest, finestChain, Setting } from "./setting";
 
 export const ROW_HEADER: i32 = 9;
 export const LEVEL_DOUBLES: i32 = 9;

@@ -20,7 +20,9 @@ import { blockCount, blockEnd, blockStart } from "./blocks";
 import { EXTREMUM_DOUBLES, extremaCount, extremaStatus, findExtrema } from "./extrema";
 import { fillChain } from "./grid";
 import { energyAxis, kAxis, kIncreases, spinCount, spinShift, stateCount, states } from "./parameters";
-import { finest, finestChain, newSetting, Point, Setting, solvePoint } from "./point";
+import { Point } from "./point";
+import { solvePoint } from "./request";
+import { finest, finestChain, newSetting, Setting } from "./setting";
 import { keepRow, packRow, rowDoubles } from "./row";
 
 let cursor: usize = 0;
