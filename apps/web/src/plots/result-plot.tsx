@@ -8,8 +8,9 @@ import { PlotActions } from './plot-actions.tsx';
 import type { Body, ResultData } from './result-data.ts';
 import { Segmented } from './segmented.tsx';
 import { useResultData } from './use-result-data.ts';
+import type { View } from './view.ts';
 import { ViewChoice } from './view-choice.tsx';
-import { type View, viewsOf } from './views.ts';
+import { viewsOf } from './views.ts';
 
 type PlottedJob = Pick<JobView, 'hash' | 'model' | 'title' | 'kernel' | 'resultDigest' | 'arrays' | 'specification'>;
 

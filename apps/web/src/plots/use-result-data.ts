@@ -5,7 +5,8 @@ import { api } from '../lib/api.ts';
 import type { ApiProblem } from '../lib/api-problem.ts';
 import { keyOf } from '../lib/query.ts';
 import { type Body, type DataArray, type ResultData, toDataArray } from './result-data.ts';
-import { arraysOf, type View } from './views.ts';
+import type { View } from './view.ts';
+import { arraysOf } from './views.ts';
 
 /**
  * The arrays that a view needs, each asked for once: a result never changes, so its arrays never grow stale.

@@ -1,6 +1,6 @@
 import { SelectField } from '../components/field.tsx';
 import type { ResultData } from './result-data.ts';
-import type { View } from './views.ts';
+import type { View } from './view.ts';
 
 /** What a view lets one choose, where there is more than one thing to choose from. */
 export function ViewChoice({

@@ -1,21 +1,10 @@
-import type { BuiltPlot } from './built-plot.ts';
 import { buildLandauFan } from './landau-fan.ts';
 import { buildFermiEnergy, buildHallPlateaus, buildLandauDensity } from './landau-maps.ts';
-import type { ResultData } from './result-data.ts';
 import { buildRibbonBands } from './ribbon-bands.ts';
 import { buildRibbonChannels } from './ribbon-channels.ts';
 import { buildRibbonDensity, densityStates } from './ribbon-density.ts';
-
-/** One way to look at a result: which arrays it needs (with their companions where there are any) and how it is built. */
-export interface View {
-  id: string;
-  label: string;
-  needs: readonly string[];
-  optional: readonly string[];
-  build(data: ResultData, choice?: number): BuiltPlot;
-  /** What can be chosen inside the view, e.g. one of the states asked for. */
-  choices?: { label: string; list(data: ResultData): string[] };
-}
+import type { View, ViewedArray } from './view.ts';
+import { viewsByDims } from './views-by-dims.ts';
 
 const byModel: Record<string, readonly View[]> = {
   'landau-levels': [
@@ -75,11 +64,13 @@ const byModel: Record<string, readonly View[]> = {
 };
 
 /** The views that a result with these arrays can show. An empty array (no states asked for) is no view. */
-export function viewsOf(model: string, arrays: readonly { name: string; shape: readonly number[] }[]): View[] {
+export function viewsOf(model: string, arrays: readonly ViewedArray[]): View[] {
   const filled = new Set(
     arrays.filter((array) => array.shape.every((length) => length > 0)).map((array) => array.name),
   );
-  return (byModel[model] ?? []).filter((view) => view.needs.every((name) => filled.has(name)));
+  const own = byModel[model];
+  if (!own) return viewsByDims(model, arrays);
+  return own.filter((view) => view.needs.every((name) => filled.has(name)));
 }
 
 /** Names of the arrays to load for a view: needs, optional ones that exist, and offsets of ragged ones. */

@@ -8,7 +8,7 @@ import { reduceSpecification } from './reduce-specification.ts';
 
 export interface PreviewResult {
   data: ResultData;
-  heads: { name: string; shape: number[]; ragged?: string }[];
+  heads: { name: string; shape: number[]; dims: string[]; ragged?: string }[];
   /** What was left out: '61 of 401 k'. */
   stated: string[];
   /** Time the kernel took. */
