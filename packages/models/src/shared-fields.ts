@@ -22,8 +22,7 @@ export const diracVelocityEvNm: Field = {
   name: 'diracVelocityEvNm',
   type: 'number',
   unit: 'eV nm',
-  min: 0,
-  exclusiveMin: true,
+  min: 1e-6,
   max: 100,
   default: 0.5751,
   display: {

@@ -204,7 +204,9 @@ function iterate(chain: Chain, first: i32, members: i32, values: usize, vectors:
   const workspace = reserve(chain.closed ? ringSolveBytes(chain.n) : tridiagonalSolveBytes(chain.n));
   for (let k = 0; k < members; k++) {
     const z = vectors + <usize>(first + k) * size;
-    const x = at(values, first + k);
+    // Off the levels of a cluster by a few roundings, each by its own: exactly on one of them its vector would drown
+    // the others of the space (zero modes at opposite edges are closer than any double can tell).
+    const x = at(values, first + k) + (members > 1 ? <f64>(k + 1) * chain.tolerance : 0);
     const inner = mark(); // the matrix of a ring
     if (chain.closed) factorRing(chain, x, workspace);
     else factorTridiagonal(chain, x, workspace);
