@@ -37,8 +37,9 @@ export class Outbox {
   }
 
   post(): void {
-    this.#postedAt = performance.now();
+    // an empty message is none: the first result after a quiet time goes at once, for a long slice may follow it
     if (this.#waiting.length === 0) return;
+    this.#postedAt = performance.now();
     const cpuMs = this.clock.readMs();
     const used = cpuMs - this.#lastCpuMs;
     this.#lastCpuMs = cpuMs;
