@@ -15,7 +15,8 @@ try {
   );
   // settings are versioned: a second start adds no version
   const { version, groupName: present } = await findSettings(db);
-  if (version === 1 && present !== groupName) await saveSettings(db, { accountId: null, requestId: null }, { groupName });
+  if (version === 1 && present !== groupName)
+    await saveSettings(db, { accountId: null, requestId: null }, { groupName });
 } finally {
   await pool.end();
 }

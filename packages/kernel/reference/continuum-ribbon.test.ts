@@ -246,6 +246,14 @@ describe('Landau levels in a wide ribbon', () => {
     expectCertified(runRibbon(kernel, parameters), 'landau-ladder');
   });
 
+  it('zero modes at opposite edges, closer than a double can tell, are found with their vectors', () => {
+    // published source: L. Brey, H. A. Fertig, PRB 73, 195408 (2006): the n = 0 branches of a wide strip
+    const parameters = { edge: zigzag, width: nm(100), fieldT: 12, kPerNm: values(-0.85, -0.5, 0, 0.5, 0.85) };
+    const result = runRibbon(kernel, { ...parameters, valleys: 'both', spectrum: window(-0.05, 0.05) });
+    expectCertified(result, 'plus-minus-symmetry');
+    for (let row = 1; row <= 3; row++) expect(levelsOf(result, row)).toHaveLength(2);
+  });
+
   it('[B3] a crossed field in a strip follows the closed form', () => {
     // published source: V. Lukose, R. Shankar, G. Baskaran, PRL 98, 116802 (2007); β = 0.3, k = 0, so no shift
     const slope = 0.00262119212782;

@@ -88,7 +88,7 @@ describe('one attempt at a chunk', { timeout: 20_000 }, () => {
 
   it('yields when its budget is used up, and gives the rest back', async () => {
     const queue = fakeQueue();
-    const run = start(queue, [wholeTask(0, busy(10)), wholeTask(1, busy(10)), wholeTask(2, busy(10))], 50);
+    const run = start(queue, [wholeTask(0, busy(40)), wholeTask(1, busy(40)), wholeTask(2, busy(40))], 5);
     await run.compute();
     await run.settle();
     expect(queue.records.map(({ index }) => index)).toEqual([0]);
@@ -115,7 +115,7 @@ describe('one attempt at a chunk', { timeout: 20_000 }, () => {
 
   it('leaves the thread alone once its own tasks are computed', async () => {
     const queue = fakeQueue();
-    const earlier = start(queue, [wholeTask(0, { slices: 1 })]);
+    const earlier = start(fakeQueue(), [wholeTask(0, { slices: 1 })]);
     await earlier.compute();
     const later = start(queue, [wholeTask(1, busy(4)), wholeTask(2, { slices: 1 })]);
     const computed = later.compute();
